@@ -1,0 +1,2 @@
+/** Events of the lineage room. */
+export const lineageEvents = {} as const;

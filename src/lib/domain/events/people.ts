@@ -1,0 +1,2 @@
+/** Events of the people room. */
+export const peopleEvents = {} as const;

@@ -1,0 +1,2 @@
+/** Events of the policy room. */
+export const policyEvents = {} as const;

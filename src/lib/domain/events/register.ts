@@ -1,0 +1,2 @@
+/** Events of the register room. */
+export const registerEvents = {} as const;

@@ -1,0 +1,2 @@
+/** Events of the runs room. */
+export const runsEvents = {} as const;

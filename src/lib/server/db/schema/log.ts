@@ -1,0 +1,11 @@
+/** The log's own tables. */
+export interface LogSchema {
+	entry: { seq: number; at: string; type: string; actor: string; body: string };
+	entry_subject: { ref: string; n: number; seq: number };
+	node: { pos: number; hash: Buffer };
+	checkpoint: { size: number; root: Buffer; note: string; at: string };
+	blob: { sha256: string; size: number; bytes: Buffer };
+	log_head: { one: number; size: number; at: string };
+	current_entry: { seq: number };
+	never: { seq: number };
+}

@@ -1,0 +1,3 @@
+/** Tables of the register room. */
+// eslint-disable-next-line @typescript-eslint/no-empty-object-type -- filled with its migration
+export interface RegisterSchema {}

@@ -1,0 +1,56 @@
+/**
+ * Every table stands in exactly one of three lists; a test compares them with the schema.
+ * The log is append-only; projected tables are functions of the log and change only beside a fresh entry;
+ * the rest lies outside the log (secrets, names, queues).
+ */
+export const logTables = [
+	'entry',
+	'entry_subject',
+	'node',
+	'checkpoint',
+	'blob',
+	'log_head',
+	'current_entry',
+	'never'
+] as const;
+
+export const projectedTables = [
+	// people
+	'person_state',
+	'role_grant',
+	'grant_proposal',
+	'credential',
+	'token',
+	// policy
+	'policy',
+	// register
+	'model',
+	'model_use',
+	'model_party',
+	'prior',
+	'version',
+	// lineage
+	'dataset',
+	'vintage',
+	'series',
+	// runs
+	'run'
+] as const;
+
+export const outsideTables = [
+	'person',
+	'person_name',
+	'session',
+	'challenge',
+	'password',
+	'recovery_code',
+	'enrolment_link',
+	'token_secret',
+	'upload',
+	'run_queue',
+	'rate_limit',
+	'kysely_migration',
+	'kysely_migration_lock'
+] as const;
+
+export type ProjectedTable = (typeof projectedTables)[number];

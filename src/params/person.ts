@@ -1,0 +1,1 @@
+export const match = (value: string): boolean => /^p_[a-z2-7]{26}$/.test(value);

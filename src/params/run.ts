@@ -1,0 +1,3 @@
+import { forms } from '$lib/domain/references';
+
+export const match = (value: string): boolean => forms.run.test(value);
