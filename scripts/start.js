@@ -1,0 +1,59 @@
+// Starts the built server: settings first, then every start-up check, and only then a listening socket.
+import { createServer } from 'node:http';
+
+const env = process.env;
+env.HOST ??= '127.0.0.1';
+env.PORT ??= '4173';
+env.KEELBOOK_ORIGIN ??= `http://localhost:${env.PORT}`;
+// The handler's own settings follow ours; uploads are bounded by the application, with a sentence.
+env.ORIGIN = env.KEELBOOK_ORIGIN;
+env.BODY_SIZE_LIMIT ??= String(27 * 1024 * 1024);
+
+/** @typedef {Error & { exitCode?: number }} Fault */
+
+/** @param {unknown} fault */
+const stop = (fault) => {
+	const { message, exitCode = 70, stack } = /** @type {Fault} */ (fault);
+	process.stderr.write(`${exitCode === 70 ? (stack ?? message) : message}\n`);
+	process.exit(exitCode);
+};
+
+const { handler } = await import('../build/handler.js').catch(stop);
+
+const server = createServer(
+	{ headersTimeout: 10_000, requestTimeout: 120_000, keepAliveTimeout: 5_000, maxHeaderSize: 16 * 1024 },
+	(request, response) => {
+		// Static files are answered before the application's hooks: they get the common headers here.
+		response.setHeader('x-content-type-options', 'nosniff');
+		response.setHeader('referrer-policy', 'same-origin');
+		response.setHeader('cross-origin-resource-policy', 'same-origin');
+		handler(request, response, () => {
+			response.statusCode = 404;
+			response.end('There is no such page.');
+		});
+	}
+);
+
+server.on('error', (fault) => {
+	const inUse = /** @type {NodeJS.ErrnoException} */ (fault).code === 'EADDRINUSE';
+	stop(
+		inUse
+			? Object.assign(new Error(`Port ${env.PORT} is in use; set PORT to a free one.`), { exitCode: 75 })
+			: fault
+	);
+});
+
+server.listen(Number(env.PORT), env.HOST, () => {
+	process.stdout.write(`Keelbook answers at ${env.KEELBOOK_ORIGIN}\n`);
+	process.emit(/** @type {'SIGUSR2'} */ (/** @type {unknown} */ ('keelbook:listening')), 'SIGUSR2');
+});
+
+/** Finish what is being answered, close the register (its last checkpoint is signed), leave. */
+const leave = () => {
+	server.close(() => process.exit(0));
+	server.closeIdleConnections();
+	process.emit(/** @type {'SIGUSR2'} */ (/** @type {unknown} */ ('sveltekit:shutdown')), 'SIGUSR2');
+	setTimeout(() => process.exit(0), 10_000).unref();
+};
+process.once('SIGTERM', leave);
+process.once('SIGINT', leave);
