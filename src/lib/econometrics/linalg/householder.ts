@@ -34,7 +34,14 @@ function makeReflector(a: Float64Array, at: number, j: number, rows: number): nu
 }
 
 /** Applies the reflector stored at `from` (rows j..) to the column of `target` that starts at `to`. */
-function reflect(a: Float64Array, from: number, j: number, rows: number, target: Float64Array, to: number): void {
+function reflect(
+	a: Float64Array,
+	from: number,
+	j: number,
+	rows: number,
+	target: Float64Array,
+	to: number
+): void {
 	const pivot = a[from + j]!;
 	if (pivot === 0) return;
 	let product = 0;

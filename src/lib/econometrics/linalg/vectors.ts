@@ -34,3 +34,12 @@ export function centred(a: Float64Array): Float64Array {
 	const m = mean(a);
 	return a.map((value) => value - m);
 }
+
+/** Euclidean length, safe for values whose squares leave the range of doubles. */
+export function norm(a: Float64Array): number {
+	const largest = maxAbs(a);
+	if (largest === 0) return 0;
+	let squares = 0;
+	for (let i = 0; i < a.length; i++) squares += (a[i]! / largest) ** 2;
+	return largest * Math.sqrt(squares);
+}
