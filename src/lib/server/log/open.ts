@@ -1,0 +1,129 @@
+import { sha256 } from '$lib/chain/digest';
+import { verifierOf, type Verifier } from '$lib/chain/verifier-key';
+import { system } from '$lib/domain/actor';
+import type { Entry } from '$lib/domain/entry';
+import type { EventType } from '$lib/domain/events';
+import { existsSync } from 'node:fs';
+import type { Blobs, Ctx, Projectors } from '../context';
+import { raiseGates } from '../db/gates';
+import { handle, type Handle } from '../db/handle';
+import { migrate } from '../db/migrate';
+import { openReader, openWriter } from '../db/open';
+import { StartFault } from '../start-fault';
+import { openBlobs } from './blobs';
+import { signHead } from './checkpoints';
+import { makeKey, readKey, type LogKey } from './keys';
+import type { Log } from './log';
+import { entryAt } from './log.queries';
+import { record } from './record';
+import { scheduleCheckpoints } from './schedule';
+import { openStore, type Store } from './store';
+
+export interface LogOptions {
+	/** The register's database. */
+	readonly file: string;
+	/** PEM of the signing key; made when the register is new. */
+	readonly keyFile: string;
+	/** What E-0 says of a new register. */
+	readonly address: string;
+	readonly institution: string;
+	readonly demo: boolean;
+	readonly projectors: Projectors;
+	readonly now: () => Date;
+}
+
+export interface OpenedLog {
+	/** The live register on a read-only connection. */
+	readonly read: Handle;
+	readonly write: Ctx['write'];
+	readonly log: Log;
+	readonly blobs: Blobs;
+	/** What E-0 says; settings that differ from it do not change it. */
+	readonly opening: Entry<'log.opened'>;
+	/** True when this call wrote E-0. */
+	readonly fresh: boolean;
+	/** Signs the head and closes the file. */
+	readonly close: () => void;
+}
+
+/** The name of a log: the host it was opened at and the beginning of the digest of E-0. */
+export const originOf = (opening: string): string => {
+	const { payload } = JSON.parse(opening) as Entry<'log.opened'>;
+	const digest = sha256(Buffer.from(opening)).toString('hex').slice(0, 16);
+	return `${new URL(payload.address).host}/keelbook/${digest}`;
+};
+
+/** The verifier that E-0 names. */
+export const verifierOfLog = (opening: string): Verifier => {
+	const { payload } = JSON.parse(opening) as Entry<'log.opened'>;
+	return verifierOf(originOf(opening), Buffer.from(payload.publicKey, 'base64').subarray(1));
+};
+
+const writeOpening = (store: Store, key: LogKey, options: LogOptions): void => {
+	const publicKey = Buffer.concat([Buffer.of(1), key.publicKey]).toString('base64');
+	const { demo, address, institution } = options;
+	store.write((tx) =>
+		record(
+			{ log: store },
+			tx,
+			system('start'),
+			{ rule: 'log.open' },
+			{
+				type: 'log.opened',
+				subjects: ['register'],
+				payload: { demo, publicKey, address, institution }
+			}
+		)
+	);
+};
+
+/**
+ * Opens a register's file: settings, tables, gates, the log; a new register gets its key and E-0.
+ * @throws StartFault 78 when the key is not the one E-0 names, 70 when a setting does not take, 76 for a newer file.
+ */
+export const openLog = async (options: LogOptions): Promise<OpenedLog> => {
+	const { file, keyFile, projectors, now } = options;
+	const sqlite = openWriter(file);
+	try {
+		await migrate(sqlite);
+		raiseGates(sqlite);
+		let settled: (types: readonly EventType[]) => void = () => undefined;
+		const store = openStore(sqlite, projectors, now, (types) => settled(types));
+		const fresh = store.frontier().size === 0;
+		const key = fresh && !existsSync(keyFile) ? makeKey(keyFile) : readKey(keyFile);
+		if (fresh) writeOpening(store, key, options);
+		const reader = openReader(file);
+		const read = handle(reader);
+		const opening = read.first<{ body: string }>(entryAt(read.q, 0))!.body;
+		const verifier = verifierOfLog(opening);
+		if (!verifier.publicKey.equals(key.publicKey))
+			throw new StartFault(78, `The log key ${keyFile} is not the one that E-0 names`);
+		const signCheckpoint: Log['signCheckpoint'] = () => signHead(store, verifier, key, now);
+		const schedule = scheduleCheckpoints(signCheckpoint);
+		settled = schedule.settled;
+		if (fresh) signCheckpoint();
+		return Object.freeze({
+			read,
+			write: store.write,
+			log: Object.freeze({
+				origin: verifier.name,
+				verifier,
+				frontier: store.frontier,
+				append: store.append,
+				signCheckpoint
+			}),
+			blobs: openBlobs(read),
+			opening: JSON.parse(opening) as Entry<'log.opened'>,
+			fresh,
+			close: () => {
+				schedule.stop();
+				signCheckpoint();
+				reader.close();
+				sqlite.close();
+			}
+		});
+	} catch (cause) {
+		sqlite.close();
+		throw cause;
+	}
+};
