@@ -1,7 +1,6 @@
-import type { Reason } from '$lib/econometrics/refusal';
 import type { EstimatorKind, Specification } from './specification';
 import type { SpecificationTerm } from './specification-terms';
-import type { Override, Purpose, Verdict } from './run';
+import type { Override, Purpose, Reason, Verdict } from './run';
 
 /** A number where there is one; a result holds no NaN and no infinity. */
 export type Figure = number | null;

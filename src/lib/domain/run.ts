@@ -1,12 +1,37 @@
 import { z } from 'zod';
+import { purposes } from './permission-table';
 import { lineSchema } from './policy';
 import { specificationSchema } from './specification';
 
 export const verdicts = ['holds', 'query', 'fails', 'not assessable'] as const;
 export type Verdict = (typeof verdicts)[number];
 
-export const purposes = ['planned', 'validation', 'exploratory'] as const;
-export type Purpose = (typeof purposes)[number];
+/** Why something was not assessed; closed list, the sentence beside it says the rest. */
+export const reasons = [
+	'non-finite',
+	'domain',
+	'gap',
+	'duplicate',
+	'frequency',
+	'constant',
+	'too-short',
+	'rank',
+	'perfect-fit',
+	'empty-trim',
+	'first-rows',
+	'no-variance',
+	'lag',
+	'table',
+	'no-scenario',
+	'not-observable',
+	'needs-cointegration',
+	'no-approved-version',
+	'no-horizon',
+	'given'
+] as const;
+export type Reason = (typeof reasons)[number];
+
+export type { Purpose } from './permission-table';
 
 const digest = z.string().regex(/^sha256:[0-9a-f]{64}$/);
 

@@ -23,6 +23,7 @@ export const projectedTables = [
 	'token',
 	// policy
 	'policy',
+	'policy_proposal',
 	// register
 	'model',
 	'model_use',
@@ -42,13 +43,14 @@ export const outsideTables = [
 	'person_name',
 	'session',
 	'challenge',
+	'credential_use',
+	'seat_key',
 	'password',
 	'recovery_code',
 	'enrolment_link',
 	'token_secret',
 	'upload',
 	'run_queue',
-	'rate_limit',
 	'kysely_migration',
 	'kysely_migration_lock'
 ] as const;
