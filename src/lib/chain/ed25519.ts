@@ -9,7 +9,7 @@ export class BadKey extends Error {
  * Points of small order and their other encodings (y = 0, ±1, the two of order 8, and y + p of 0 and 1), without the sign
  * bit. With such a key one signature passes for every message, and Node does not refuse it.
  */
-const smallOrder = new Set([
+const smallOrderPoints = new Set([
 	'0000000000000000000000000000000000000000000000000000000000000000',
 	'0100000000000000000000000000000000000000000000000000000000000000',
 	'26e8958fc2b227b045c3f489f2ef98f0d5dfac05d3c63339b13802886d53fc05',
@@ -21,12 +21,17 @@ const smallOrder = new Set([
 
 const spkiPrefix = Buffer.from('302a300506032b6570032100', 'hex');
 
+/** Whether 32 raw bytes encode a point of small order. */
+export const smallOrder = (raw: Uint8Array): boolean => {
+	const y = Buffer.from(raw);
+	y[31] = y[31]! & 0x7f;
+	return smallOrderPoints.has(y.toString('hex'));
+};
+
 /** Checks 32 raw bytes of an Ed25519 public key. @throws BadKey */
 export const checkPublicKey = (raw: Uint8Array): void => {
 	if (raw.length !== 32) throw new BadKey(`an Ed25519 key has 32 bytes, not ${raw.length}`);
-	const y = Buffer.from(raw);
-	y[31] = y[31]! & 0x7f;
-	if (smallOrder.has(y.toString('hex'))) throw new BadKey('the Ed25519 key is of small order');
+	if (smallOrder(raw)) throw new BadKey('the Ed25519 key is of small order');
 };
 
 /** A public key from its 32 raw bytes (RFC 8032 §5.1.5). @throws BadKey */

@@ -26,3 +26,7 @@ export const blobOf = (q: Q, digest: string) =>
 
 export const blobExists = (q: Q, digest: string) =>
 	q.selectFrom('blob').select('size').where('sha256', '=', digest);
+
+/** The texts of `count` entries from a folio on. */
+export const bodiesFrom = (q: Q, seq: number, count: number) =>
+	q.selectFrom('entry').select(['seq', 'body']).where('seq', '>=', seq).orderBy('seq').limit(count);
