@@ -32,7 +32,6 @@ export default defineConfig({
 				test: {
 					name: 'e2e',
 					include: ['tests/e2e/**/*.test.ts'],
-					globalSetup: ['tests/support/e2e-setup.ts'],
 					fileParallelism: false,
 					testTimeout: 120_000,
 					hookTimeout: 120_000

@@ -28,6 +28,11 @@ export interface People {
 /** What authorisation must know of a subject; provided by the room that owns it. */
 export interface Facts {
 	model(handle: Handle, ref: string): ModelFacts | undefined;
+	/** A person's relations to models, in force now. */
+	parties(
+		handle: Handle,
+		person: PersonId
+	): readonly { readonly model: string; readonly party: 'owner' | 'developer' | 'validator' }[];
 }
 
 /** Everything a verb needs, assembled once in boot.ts. Rooms import these types only. */
