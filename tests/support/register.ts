@@ -1,6 +1,7 @@
 import type { Ctx, Facts, People, Projectors } from '$lib/server/context';
 import type { Config } from '$lib/server/config';
 import { openLog, type OpenedLog } from '$lib/server/log/open';
+import { projectors as everyProjector } from '$lib/server/projectors';
 import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -37,7 +38,7 @@ export const testRegister = async (options: TestRegisterOptions = {}): Promise<T
 		zone: 'Europe/Berlin',
 		logKeyFile: join(folder, 'log-key.pem')
 	};
-	const projectors = options.projectors ?? {};
+	const projectors = options.projectors ?? everyProjector;
 	const opened = await openLog({
 		file: join(folder, 'keelbook.db'),
 		keyFile: config.logKeyFile,
@@ -54,7 +55,7 @@ export const testRegister = async (options: TestRegisterOptions = {}): Promise<T
 		write: opened.write,
 		log: opened.log,
 		projectors,
-		facts: options.facts ?? { model: () => undefined },
+		facts: options.facts ?? { model: () => undefined, parties: () => [] },
 		blobs: opened.blobs,
 		people: options.people ?? { names: (ids) => new Map([...ids].map((id) => [id, id])) },
 		policies: new Map(),

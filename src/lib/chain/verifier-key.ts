@@ -33,13 +33,19 @@ export const strictBase64 = (text: string): Buffer | undefined => {
 	return bytes.toString('base64') === text ? bytes : undefined;
 };
 
-/** Reads the text form. @throws Error when it is malformed or its key id does not belong to it. */
+/** A text that is not a verifier key. */
+export class BadVerifierKey extends Error {
+	override readonly name = 'BadVerifierKey';
+}
+
+/** Reads the text form. @throws BadVerifierKey when it is malformed or its key id does not belong to it; BadKey. */
 export const parseVerifier = (text: string): Verifier => {
 	const [, name, id, key] = /^([^+]+)\+([0-9a-f]{8})\+([A-Za-z0-9+/=]+)$/.exec(text) ?? [];
 	const bytes = key === undefined ? undefined : strictBase64(key);
 	if (!name || !bytes || bytes[0] !== 1)
-		throw new Error('Not a verifier key: <name>+<8 hex digits>+<base64>');
+		throw new BadVerifierKey('Not a verifier key: <name>+<8 hex digits>+<base64>');
 	const verifier = verifierOf(name, bytes.subarray(1));
-	if (verifier.id.toString('hex') !== id) throw new Error('The key id does not belong to this name and key');
+	if (verifier.id.toString('hex') !== id)
+		throw new BadVerifierKey('The key id does not belong to this name and key');
 	return verifier;
 };

@@ -1,5 +1,3 @@
-import { sha256 } from '$lib/chain/digest';
-import { verifierOf, type Verifier } from '$lib/chain/verifier-key';
 import { system } from '$lib/domain/actor';
 import type { Entry } from '$lib/domain/entry';
 import type { EventType } from '$lib/domain/events';
@@ -15,6 +13,7 @@ import { signHead } from './checkpoints';
 import { makeKey, readKey, type LogKey } from './keys';
 import type { Log } from './log';
 import { entryAt } from './log.queries';
+import { verifierOfLog } from './opening';
 import { record } from './record';
 import { scheduleCheckpoints } from './schedule';
 import { openStore, type Store } from './store';
@@ -45,19 +44,6 @@ export interface OpenedLog {
 	/** Signs the head and closes the file. */
 	readonly close: () => void;
 }
-
-/** The name of a log: the host it was opened at and the beginning of the digest of E-0. */
-export const originOf = (opening: string): string => {
-	const { payload } = JSON.parse(opening) as Entry<'log.opened'>;
-	const digest = sha256(Buffer.from(opening)).toString('hex').slice(0, 16);
-	return `${new URL(payload.address).host}/keelbook/${digest}`;
-};
-
-/** The verifier that E-0 names. */
-export const verifierOfLog = (opening: string): Verifier => {
-	const { payload } = JSON.parse(opening) as Entry<'log.opened'>;
-	return verifierOf(originOf(opening), Buffer.from(payload.publicKey, 'base64').subarray(1));
-};
 
 const writeOpening = (store: Store, key: LogKey, options: LogOptions): void => {
 	const publicKey = Buffer.concat([Buffer.of(1), key.publicKey]).toString('base64');
