@@ -1,11 +1,6 @@
 import { createPublicKey, type KeyObject } from 'node:crypto';
 import { strictBase64url } from './base64url';
-import { smallOrder } from './ed25519';
-
-/** A public key that is not one of the three kinds, or not exactly in their form. */
-export class BadKey extends Error {
-	override readonly name = 'BadKey';
-}
+import { BadKey, publicKeyFrom as ed25519Key } from './ed25519';
 
 /** COSE algorithm numbers taken: EdDSA, ES256, RS256 (IANA COSE Algorithms). */
 export const algorithms = [-8, -7, -257] as const;
@@ -96,8 +91,7 @@ export const publicKeyOf = (cose: Uint8Array): PublicKey => {
 			exactly(map, [1, 3, -1, -2]);
 			const x = bytesOf(map, -2, 32);
 			if (map.get(1) !== 1 || map.get(-1) !== 6) throw new BadKey('not an Ed25519 key');
-			if (smallOrder(x)) throw new BadKey('an Ed25519 key of small order');
-			return { algorithm: -8, key: imported({ kty: 'OKP', crv: 'Ed25519', x: text(x) }) };
+			return { algorithm: -8, key: ed25519Key(x) };
 		}
 		case -7: {
 			exactly(map, [1, 3, -1, -2, -3]);
@@ -118,7 +112,7 @@ export const publicKeyOf = (cose: Uint8Array): PublicKey => {
 };
 
 /** The same from base64url, as `credential.enrolled` writes it. @throws BadKey */
-export const publicKeyFrom = (encoded: string): PublicKey => {
+export const publicKeyFromText = (encoded: string): PublicKey => {
 	const bytes = strictBase64url(encoded);
 	if (!bytes) throw new BadKey('the key is not base64url');
 	return publicKeyOf(bytes);

@@ -3,7 +3,7 @@ import type { StepUp } from '$lib/domain/entry';
 import { strictBase64url } from './base64url';
 import { canonical, parseCanonical } from './canonical';
 import { readClientData } from './client-data';
-import { publicKeyFrom, type PublicKey } from './cose-key';
+import { publicKeyFromText, type PublicKey } from './cose-key';
 import { digestForm, sha256 } from './digest';
 
 /** What a person signs over: the act, its subject and everything decided upon, at a named head of the log. */
@@ -147,7 +147,7 @@ export const verifyStepUp = (stepUp: StepUp, enrolled: string, origin: string): 
 	checkClientData(clientData, challengeOf(stepUp.statement), origin);
 	checkAuthenticatorData(authenticatorData, new URL(origin).hostname);
 	const signed = Buffer.concat([authenticatorData, sha256(clientData)]);
-	if (!signedBy(publicKeyFrom(enrolled), signed, decoded('signature', stepUp.signature)))
+	if (!signedBy(publicKeyFromText(enrolled), signed, decoded('signature', stepUp.signature)))
 		throw new BadStepUp('the signature is not that of the enrolled key');
 	return statement;
 };

@@ -41,6 +41,8 @@ export interface PeopleSchema {
 		kind: 'passkey' | 'seat';
 		public_key: string;
 		algorithm: number;
+		/** WebAuthn user handle the authenticator keeps. */
+		handle: string;
 		backup_eligible: number;
 		aaguid: string;
 		transports: string;
@@ -78,6 +80,9 @@ export interface PeopleSchema {
 		label: string;
 		person: string;
 		means: string;
+		/** Limits given at opening, in minutes: idle and in all. */
+		idle: number;
+		absolute: number;
 		created_at: string;
 		seen_at: string;
 		agent: string;
