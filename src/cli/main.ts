@@ -16,3 +16,5 @@ if (Object.hasOwn(verbs, verb)) {
 	process.stderr.write(usage);
 	process.exitCode = 64;
 }
+
+export {};

@@ -42,7 +42,7 @@ export class BadVerifierKey extends Error {
 export const parseVerifier = (text: string): Verifier => {
 	const [, name, id, key] = /^([^+]+)\+([0-9a-f]{8})\+([A-Za-z0-9+/=]+)$/.exec(text) ?? [];
 	const bytes = key === undefined ? undefined : strictBase64(key);
-	if (!name || !bytes || bytes[0] !== 1)
+	if (!name || !isKeyName(name) || !bytes || bytes[0] !== 1)
 		throw new BadVerifierKey('Not a verifier key: <name>+<8 hex digits>+<base64>');
 	const verifier = verifierOf(name, bytes.subarray(1));
 	if (verifier.id.toString('hex') !== id)
