@@ -1,0 +1,28 @@
+import type { Actor } from '$lib/domain/actor';
+import type { Action } from '$lib/domain/permission-table';
+import { may } from '$lib/server/people/allow';
+import type { Ctx } from '../context';
+import type { Handle } from '../db/handle';
+import { partiesOf } from './facts';
+
+/**
+ * Which models an actor may read, for lists. Models the actor has no relation to are all answered alike by the
+ * permission table, so that it is asked once for them and not a thousand times.
+ */
+export const readable = (
+	ctx: Ctx,
+	handle: Handle,
+	actor: Actor,
+	action: Extract<Action, 'model.read' | 'version.read' | 'run.read'> = 'model.read'
+): ((model: string) => boolean) => {
+	const related = new Set(
+		actor.person === 'system' || actor.person === 'cli'
+			? []
+			: partiesOf(handle, actor.person).map(({ model }) => model)
+	);
+	let others: boolean | undefined;
+	return (model) =>
+		related.has(model)
+			? may(ctx, handle, actor, action, { model })
+			: (others ??= may(ctx, handle, actor, action, { model }));
+};

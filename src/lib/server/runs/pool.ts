@@ -1,0 +1,75 @@
+import { existsSync } from 'node:fs';
+import { availableParallelism } from 'node:os';
+import { fileURLToPath } from 'node:url';
+import { MessageChannel } from 'node:worker_threads';
+import { Piscina } from 'piscina';
+import type { parseUpload } from '$lib/server/lineage/parse';
+import type { Computed, ComputeTask, Progress } from './task';
+
+type ParseInput = Parameters<typeof parseUpload>[0];
+type ParseOutcome = Awaited<ReturnType<typeof parseUpload>>;
+
+export interface TaskOptions {
+	/** Ends the thread, even in an endless loop. */
+	readonly signal?: AbortSignal;
+}
+
+export interface ComputeOptions extends TaskOptions {
+	/** Called with how far the thread is; the first call says that it began. */
+	readonly progress?: (progress: Progress) => void;
+}
+
+/** Threads beside the one that answers requests: runs are computed and files parsed there. */
+export interface Pool {
+	readonly compute: (task: ComputeTask, options?: ComputeOptions) => Promise<Computed>;
+	readonly parse: (input: ParseInput, options?: TaskOptions) => Promise<ParseOutcome>;
+	/** True from the moment of closing: what ends then did not fail. */
+	readonly closed: () => boolean;
+	readonly close: () => Promise<void>;
+}
+
+// Built, this module lies at some depth under server/chunks beside worker.js; otherwise the source runs under tsx.
+const built = import.meta.env.PROD;
+const filename = built
+	? fileURLToPath(new URL('worker.js', import.meta.url.replace(/server\/chunks\/.*$/, '')))
+	: fileURLToPath(new URL('./worker.ts', import.meta.url));
+
+/**
+ * Opens the pool of threads; they start with the first task.
+ * @throws Error when the file of the thread is missing
+ */
+export const createPool = (threads: number = Math.max(2, availableParallelism() - 1)): Pool => {
+	if (!existsSync(filename)) throw new Error(`The program is incomplete: ${filename} is missing.`);
+	const piscina = new Piscina({
+		filename,
+		minThreads: 0,
+		maxThreads: threads,
+		idleTimeout: 60_000,
+		resourceLimits: { maxOldGenerationSizeMb: 1024 },
+		...(built ? {} : { execArgv: ['--import', 'tsx'] })
+	});
+	// Without a listener an error of a thread would end the server; its task is rejected anyway.
+	piscina.on('error', () => undefined);
+	let closing = false;
+	return Object.freeze({
+		compute: async (task, { signal, progress } = {}) => {
+			const { port1, port2 } = new MessageChannel();
+			port1.on('message', (told: Progress) => progress?.(told));
+			try {
+				return (await piscina.run(
+					{ ...task, port: port2 },
+					{ name: 'compute', transferList: [port2], ...(signal && { signal }) }
+				)) as Computed;
+			} finally {
+				port1.close();
+			}
+		},
+		parse: (input, { signal } = {}) =>
+			piscina.run(input, { name: 'parse', ...(signal && { signal }) }) as Promise<ParseOutcome>,
+		closed: () => closing,
+		close: async () => {
+			closing = true;
+			await piscina.destroy();
+		}
+	} satisfies Pool);
+};
