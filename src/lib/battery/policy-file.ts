@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
 import { parse } from 'yaml';
-import { Invalid } from '../domain/faults';
-import { policySchema, type Policy } from '../domain/policy';
+import { Invalid } from '$lib/domain/faults';
+import { policySchema, type Policy } from '$lib/domain/policy';
 
 /** A released policy: the file's name, the digest of its bytes, and what it says. */
 export interface PolicyRelease {

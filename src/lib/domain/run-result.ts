@@ -66,8 +66,11 @@ export interface Estimates {
 	/** lambda > 0 when the model corrects; the coefficient on the gap is its negative. */
 	readonly speed: Estimate;
 	readonly halfLife: HalfLife;
-	/** The relation in the gap, with delta-method errors where it was estimated here. */
+	/** The relation in the gap; delta-method errors in the one-step form, none where it was imposed or is static. */
 	readonly longRun: readonly TermEstimate[];
+	/** The same relation from the one-step form with delta-method errors, which the declared signs and ranges use. */
+	readonly longRunOneStep: readonly TermEstimate[] | null;
+	/** Of speed, slopes and constant of the one-step form: codes `speed`, `long.<series>`, `long.const`. */
 	readonly longRunCovariance: Covariance | null;
 	readonly equation: EquationEstimates;
 	/** First step of a two-step estimate; its t-ratios are not t-distributed and are not shown. */
@@ -80,7 +83,9 @@ export interface Companion {
 	readonly estimates: EquationEstimates | null;
 	readonly refused?: { readonly reason: Reason; readonly detail: string };
 	/** The levels wander together without cointegrating: their fit says nothing. */
-	readonly warning?: 'spurious-levels';
+	readonly warning?: 'spurious-levels' | 'not-established';
+	/** F of the long-run terms that the model adds to the differences; not F-distributed unless levels cointegrate. */
+	readonly longRunF?: { readonly value: number; readonly df1: number; readonly df2: number };
 }
 
 export interface SeriesUsed {
@@ -156,7 +161,8 @@ export interface Part {
 export interface Check {
 	readonly id: string;
 	readonly group: string;
-	readonly verdict: Verdict;
+	/** Null where the check is shown only: the joint reading of the series, or nobody, judges it. */
+	readonly verdict: Verdict | null;
 	/** Given with *not assessable*. */
 	readonly reason?: Reason;
 	/** The sentence of a refusal, or the condition a verdict carries. */
@@ -176,6 +182,8 @@ export interface Check {
 	readonly thresholdFrom: readonly string[];
 	readonly parts?: readonly Part[];
 	readonly plot?: CheckPlot;
+	/** The outcome under the policy's own settings, where an override changed it. */
+	readonly byDefault?: { readonly verdict: Verdict | null; readonly statistic: Figure; readonly pValue: Figure };
 }
 
 export interface Group {

@@ -31,7 +31,7 @@ export const reasons = [
 ] as const;
 export type Reason = (typeof reasons)[number];
 
-export type { Purpose } from './permission-table';
+export { purposes, type Purpose } from './permission-table';
 
 const digest = z.string().regex(/^sha256:[0-9a-f]{64}$/);
 

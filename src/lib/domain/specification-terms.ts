@@ -35,16 +35,15 @@ const term = (
 		...(series !== undefined && { series })
 	});
 
-/** Seasonal dummies become one column a period of the year but the last, its base. */
-const dummyTerms = (spec: Specification, part: 'long' | 'short', perYear: number): SpecificationTerm[] =>
+/** Names of the dummy columns of a part; a seasonal pattern is one column a period of the year but the last, its base. */
+const dummyNames = (spec: Specification, part: 'long' | 'short'): string[] =>
 	spec.dummies
 		.filter((dummy) => dummy.in === 'both' || dummy.in === part)
 		.flatMap((dummy) =>
 			dummy.kind === 'seasonal'
-				? Array.from({ length: perYear - 1 }, (_, i) => `${dummy.name}${i + 1}`)
+				? Array.from({ length: periodsPerYear[spec.frequency] - 1 }, (_, i) => `${dummy.name}${i + 1}`)
 				: [dummy.name]
-		)
-		.map((name) => term(part, 'dummy', part === 'long' ? `long.${name}` : name, name));
+		);
 
 /**
  * Whether the equation has free levels of its variables rather than a gap made beforehand. Coefficients from
@@ -60,36 +59,39 @@ export const longRunTerms = (spec: Specification): readonly SpecificationTerm[] 
 	...(spec.longRun.constant ? [term('long', 'constant', 'long.const')] : []),
 	...(spec.longRun.trend ? [term('long', 'trend', 'long.trend')] : []),
 	...spec.longRun.drivers.map(({ series }) => term('long', 'level', `long.${series}`, series)),
-	...dummyTerms(spec, 'long', periodsPerYear[spec.frequency])
+	...dummyNames(spec, 'long').map((name) => term('long', 'dummy', `long.${name}`, name))
 ];
+
+/** Levels one period back, or the gap. */
+const relationTerms = (spec: Specification): SpecificationTerm[] =>
+	levelsAreFree(spec)
+		? [
+				term('short', 'level', 'y.l1', spec.dependent, 1),
+				...spec.longRun.drivers.map(({ series }) => term('short', 'level', `${series}.l1`, series, 1)),
+				...dummyNames(spec, 'long').map((name) => term('short', 'dummy', `${name}.l1`, name, 1))
+			]
+		: [term('short', 'gap', 'ec.l1', undefined, 1)];
 
 /** The regressors of the equation for the difference of the dependent variable, in their fixed order. */
 export const equationTerms = (spec: Specification): readonly SpecificationTerm[] => {
 	const free = levelsAreFree(spec);
 	const { longRun, shortRun } = spec;
-	const own = [...shortRun.own].sort((a, b) => a - b);
+	const rising = (lags: readonly number[]): number[] => [...lags].sort((a, b) => a - b);
 	return [
 		...((free && longRun.constant) || shortRun.constant ? [term('short', 'constant', 'const')] : []),
 		...(free && longRun.trend ? [term('short', 'trend', 'trend')] : []),
-		...dummyTerms(spec, 'short', periodsPerYear[spec.frequency]),
-		...(free
-			? [
-					term('short', 'level', 'y.l1', spec.dependent, 1),
-					...longRun.drivers.map(({ series }) => term('short', 'level', `${series}.l1`, series, 1))
-				]
-			: [term('short', 'gap', 'ec.l1', undefined, 1)]),
-		...own.map((lag) => term('short', 'difference', `d.y.l${lag}`, spec.dependent, lag)),
+		...dummyNames(spec, 'short').map((name) => term('short', 'dummy', name, name)),
+		...relationTerms(spec),
+		...rising(shortRun.own).map((lag) => term('short', 'difference', `d.y.l${lag}`, spec.dependent, lag)),
 		...shortRun.drivers.flatMap(({ series, lags }) =>
-			[...lags]
-				.sort((a, b) => a - b)
-				.map((lag) => term('short', 'difference', `d.${series}.l${lag}`, series, lag))
+			rising(lags).map((lag) => term('short', 'difference', `d.${series}.l${lag}`, series, lag))
 		)
 	];
 };
 
 /**
- * Every term a coefficient can be claimed or fixed for: the relation first, then the equation. In the one-step form
- * the long-run terms are functions of the equation's own (claimed long-run slopes can be replicated, not fixed).
+ * Every term a coefficient can be claimed for: the relation first, then the equation. In the one-step form the
+ * long-run terms are functions of the equation's own: claimed slopes can be replicated, not fixed.
  */
 export const termsOf = (spec: Specification): readonly SpecificationTerm[] => [
 	...longRunTerms(spec),

@@ -1,7 +1,6 @@
 import { z } from 'zod';
+import { blobDigest, digest } from './digest';
 import { event } from './event';
-
-const digest = z.string().regex(/^sha256:[0-9a-f]{64}$/);
 
 /** A bank's own reason for a line it keeps or changes; the changed values stand in the document. */
 const ownReason = z.strictObject({ line: z.string(), changed: z.boolean(), reason: z.string() });
@@ -11,18 +10,18 @@ export const policyEvents = {
 	'policy.proposed': event(1, {
 		1: z.strictObject({
 			/** Digest of the policy: of the released file, or of the canonical document where lines were changed. */
-			policy: digest,
+			policy: digest(),
 			release: z.string(),
 			/** Blob of the canonical document, where lines were changed. */
-			document: digest.optional(),
+			document: blobDigest().optional(),
 			reasons: z.array(ownReason)
 		})
 	}),
 	'policy.adopted': event(1, {
 		1: z.strictObject({
-			policy: digest,
+			policy: digest(),
 			release: z.string(),
-			document: digest.optional(),
+			document: blobDigest().optional(),
 			/** Folio of the proposal; absent when the register adopts the released policy as it opens. */
 			proposal: z.int().optional()
 		})
