@@ -1,9 +1,10 @@
 import type Sqlite from 'better-sqlite3';
 import { projectedTables } from './tables';
 
+// SQLite keeps the text of a trigger with these two words in capitals: so it can be compared.
 const abort = (name: string, when: string, words: string, condition?: string): [string, string] => [
 	name,
-	`create trigger ${name} ${when} begin select raise(abort, '${words}')${condition ? ` where ${condition}` : ''}; end`
+	`CREATE TRIGGER ${name} ${when} begin select raise(abort, '${words}')${condition ? ` where ${condition}` : ''}; end`
 ];
 
 const immutable = (table: string): [string, string][] => [
@@ -50,7 +51,7 @@ const order: readonly [string, string][] = [
 const gate: readonly [string, string][] = [
 	[
 		'entry_open',
-		'create trigger entry_open after insert on entry begin' +
+		'CREATE TRIGGER entry_open after insert on entry begin' +
 			' delete from current_entry; insert into current_entry (seq) values (new.seq); end'
 	],
 	abort(
@@ -63,7 +64,7 @@ const gate: readonly [string, string][] = [
 	abort('current_no_update', 'before update on current_entry', 'current_entry: moves only by an entry'),
 	[
 		'current_close',
-		'create trigger current_close after delete on current_entry begin' +
+		'CREATE TRIGGER current_close after delete on current_entry begin' +
 			' update log_head set size = old.seq + 1, at = (select at from entry where seq = old.seq); end'
 	],
 	abort(
@@ -77,8 +78,8 @@ const gate: readonly [string, string][] = [
 	abort('head_no_delete', 'before delete on log_head', 'log_head: holds one row')
 ];
 
-/** A projected row changes only while an entry is being written, and names it. */
-const projected = (table: string): [string, string][] => [
+/** The gates of a projected table: a row changes only while an entry is being written, and names it. */
+export const projectionGates = (table: string): [string, string][] => [
 	...['insert', 'update'].map((verb) =>
 		abort(
 			`${table}_gate_${verb}`,
@@ -100,7 +101,7 @@ const byTable: ReadonlyMap<string, readonly (readonly [string, string])[]> = new
 	...['entry', 'entry_subject', 'node', 'checkpoint', 'blob'].map(
 		(table) => [table, immutable(table)] as const
 	),
-	...projectedTables.map((table) => [table, projected(table)] as const)
+	...projectedTables.map((table) => [table, projectionGates(table)] as const)
 ]);
 
 /** The triggers a database must have, by name, with their text as `sqlite_schema` keeps it. */
