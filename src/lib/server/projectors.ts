@@ -1,6 +1,7 @@
 import type { Projectors } from './context';
+import { lineageProjectors } from './lineage/lineage.projectors';
 import { policyProjectors } from './policy/policy.projectors';
 import { registerProjectors } from './register/register.projectors';
 
 /** What every event type does to the projected tables: one map for recording, replay, views of the past and `verify`. */
-export const projectors: Projectors = { ...policyProjectors, ...registerProjectors };
+export const projectors: Projectors = { ...policyProjectors, ...registerProjectors, ...lineageProjectors };

@@ -32,7 +32,9 @@ export const projectedTables = [
 	'version',
 	// lineage
 	'dataset',
+	'dataset_model',
 	'vintage',
+	'vintage_column',
 	'series',
 	// runs
 	'run'

@@ -1,0 +1,233 @@
+import { limits, type Choices, type Note, type ParsedColumn, type ParsedTable } from '$lib/domain/lineage';
+import { uploadIssue, type UploadIssue } from '$lib/domain/lineage-codes';
+import { decimalMarkOf } from './decimal-mark';
+import { blank, type Cell, type Grid } from './grid';
+import { findTable, type NamedTable } from './header';
+import { readNumber, type DecimalMark, type NumberFlag } from './numbers';
+import { readPeriod } from './period-text';
+import { readPeriods, type PeriodCell } from './periods';
+import { reject, Rejected, shown } from './rejected';
+
+/** A column that is not numbers, and its first text. */
+export interface LeftOutColumn {
+	readonly name: string;
+	readonly sample: string;
+}
+
+export interface TableReading {
+	readonly table: ParsedTable;
+	readonly periodColumn: string;
+	readonly leftOut: readonly LeftOutColumn[];
+}
+
+const listedCells = 20;
+
+const cellText = (cell: Cell): string => {
+	if (cell instanceof Date) return cell.toISOString().replace('T00:00:00.000Z', '');
+	return cell === null ? '' : String(cell);
+};
+
+const isPeriod = (cell: Cell | undefined): boolean =>
+	!blank(cell) && readPeriod(cellText(cell ?? null)).kind !== 'fault';
+
+interface PeriodSource {
+	readonly name: string;
+	/** Columns used up by the periods. */
+	readonly columns: readonly number[];
+	readonly cells: readonly PeriodCell[];
+}
+
+const cellsOf = (named: NamedTable, column: number): PeriodCell[] =>
+	named.rows.map(({ row, cells }) => ({ row, text: cellText(cells[column] ?? null) }));
+
+/** A column of years beside one of quarters or months. */
+const yearAndPart = (named: NamedTable): PeriodSource | undefined => {
+	const folded = named.names.map((name) => name.toLowerCase());
+	const year = folded.indexOf('year');
+	const part = folded.findIndex((name) => /^(?:quarter|qtr|month)$/.test(name));
+	if (year === -1 || part === -1) return undefined;
+	const letter = folded[part] === 'month' ? 'M' : 'Q';
+	const whole = (cell: Cell | undefined): string =>
+		cellText(cell ?? null)
+			.trim()
+			.replace(/\.0+$/, '');
+	return {
+		name: `${named.names[year]} and ${named.names[part]}`,
+		columns: [year, part],
+		cells: named.rows.map(({ row, cells }) => ({
+			row,
+			text: `${whole(cells[year])}${letter}${whole(cells[part])}`
+		}))
+	};
+};
+
+/** The chosen column, else the first when it starts with a period, else the first that holds periods throughout. */
+const periodSource = (named: NamedTable, chosen: string | undefined): PeriodSource => {
+	const at = (column: number): PeriodSource => ({
+		name: named.names[column]!,
+		columns: [column],
+		cells: cellsOf(named, column)
+	});
+	if (chosen !== undefined) {
+		const column = named.names.indexOf(chosen);
+		return column === -1 ? reject('column-unknown', [shown(chosen)]) : at(column);
+	}
+	const pair = yearAndPart(named);
+	if (pair) return pair;
+	if (isPeriod(named.rows[0]?.cells[0])) return at(0);
+	const other = named.names.findIndex((_, i) => named.rows.every(({ cells }) => isPeriod(cells[i])));
+	return at(Math.max(0, other));
+};
+
+interface NumberColumn {
+	readonly column: ParsedColumn;
+	readonly notes: readonly Note[];
+}
+
+const flagWords: Readonly<Record<NumberFlag, string>> = {
+	groups: 'separators of thousands were taken out',
+	'minus-sign': 'the typographic minus sign was read as minus',
+	underflow: 'a figure too small for a double was read as 0',
+	'many-digits': 'figures of more than 17 digits were read as the nearest double'
+};
+
+class ColumnReader {
+	private readonly values: (number | null)[] = [];
+	private readonly flags = new Map<NumberFlag, number>();
+	private readonly faults: UploadIssue[] = [];
+	private readonly marks: { row: number; text: string }[] = [];
+	private numbersInText = 0;
+	private found = 0;
+	private words = 0;
+	private sample = '';
+
+	constructor(
+		private readonly name: string,
+		private readonly mark: DecimalMark,
+		private readonly typed: boolean
+	) {}
+
+	add(row: number, cell: Cell): void {
+		if (typeof cell === 'number') {
+			this.found++;
+			this.values.push(cell === 0 ? 0 : cell);
+			return;
+		}
+		const text = cellText(cell);
+		const reading = typeof cell === 'string' || cell === null ? readNumber(text, this.mark) : undefined;
+		this.values.push(reading?.kind === 'value' ? reading.value : null);
+		if (reading?.kind === 'missing') return;
+		if (reading?.kind === 'value') {
+			this.found++;
+			if (this.typed) this.numbersInText++;
+			for (const flag of reading.flags) this.flags.set(flag, (this.flags.get(flag) ?? 0) + 1);
+			return;
+		}
+		const code = reading?.code ?? 'number';
+		if (code === 'mark') this.marks.push({ row, text });
+		else if (code === 'number') {
+			if (this.words++ === 0) this.sample = text;
+			this.fault(uploadIssue('number', [row, this.name, shown(text)], { row, column: this.name }));
+		} else this.fault(uploadIssue(code, [row, this.name, shown(text)], { row, column: this.name }));
+	}
+
+	private fault(issue: UploadIssue): void {
+		if (this.faults.length < listedCells) this.faults.push(issue);
+	}
+
+	/** A column of words only: left out, not refused. */
+	get leftOut(): LeftOutColumn | undefined {
+		const wordsOnly =
+			this.found === 0 &&
+			this.marks.length === 0 &&
+			this.words > 0 &&
+			this.faults.every(({ code }) => code === 'number');
+		return wordsOnly ? { name: this.name, sample: shown(this.sample) } : undefined;
+	}
+
+	issues(): UploadIssue[] {
+		const first = this.marks[0];
+		const marks = first
+			? [uploadIssue('mark', [this.marks.length, shown(first.text)], { row: first.row, column: this.name })]
+			: [];
+		return [...marks, ...this.faults];
+	}
+
+	result(order: readonly number[]): NumberColumn {
+		const notes = [...this.flags].map(([flag, n]) => ({
+			code: flag,
+			message: `${this.name}: ${flagWords[flag]} (${n} ${n === 1 ? 'cell' : 'cells'}).`,
+			column: this.name
+		}));
+		if (this.numbersInText > 0)
+			notes.push({
+				code: 'text-numbers' as NumberFlag,
+				message: `${this.name}: ${this.numbersInText} numbers were stored as text.`,
+				column: this.name
+			});
+		return { column: { name: this.name, values: order.map((i) => this.values[i] ?? null) }, notes };
+	}
+}
+
+const textColumns = (named: NamedTable, columns: readonly number[]) =>
+	columns.map((i) => ({
+		name: named.names[i]!,
+		cells: named.rows.flatMap(({ row, cells }) => {
+			const cell = cells[i];
+			return typeof cell === 'string' ? [{ row, text: cell }] : [];
+		})
+	}));
+
+const readColumns = (
+	named: NamedTable,
+	columns: readonly number[],
+	mark: DecimalMark,
+	typed: boolean
+): ColumnReader[] => {
+	const readers = columns.map((i) => {
+		const reader = new ColumnReader(named.names[i]!, mark, typed);
+		for (const { row, cells } of named.rows) reader.add(row, cells[i] ?? null);
+		return reader;
+	});
+	const issues = readers.flatMap((reader) => (reader.leftOut ? [] : reader.issues()));
+	if (issues.length > 0) throw new Rejected(issues.slice(0, listedCells));
+	return readers;
+};
+
+const checkSize = (observations: number, series: number): void => {
+	if (observations < limits.leastObservations) reject('too-short', [observations, limits.leastObservations]);
+	if (observations > limits.mostObservations) reject('too-many-rows', [limits.mostObservations]);
+	if (series === 0) reject('no-numbers', []);
+	if (series > limits.series) reject('too-many-columns', [limits.series]);
+};
+
+/**
+ * Gives a grid its meaning: one column of periods, the others numbers; columns of words are left out and named.
+ * @throws Rejected with every issue found in the cells, twenty at most.
+ */
+export const readTable = (grid: Grid, choices: Choices): TableReading => {
+	const named = findTable(grid, choices);
+	const source = periodSource(named, choices.periodColumn);
+	const periods = readPeriods(source.cells, choices.dateOrder);
+	const columns = named.names.map((_, i) => i).filter((i) => !source.columns.includes(i));
+	const mark = decimalMarkOf(textColumns(named, columns), choices.decimal);
+	const readers = readColumns(named, columns, mark, !grid.even);
+	const leftOut = readers.flatMap((reader) => reader.leftOut ?? []);
+	const kept = readers.filter((reader) => !reader.leftOut).map((reader) => reader.result(periods.order));
+	checkSize(periods.periods.length, kept.length);
+	const notes: Note[] = [...grid.notes, ...named.notes, ...periods.notes];
+	if (mark === ',') notes.push({ code: 'decimal-comma', message: 'Read as decimal comma.' });
+	for (const { name, sample } of leftOut)
+		notes.push({
+			code: 'text-column',
+			message: `${name} holds words (${sample}) and was left out.`,
+			column: name
+		});
+	const table: ParsedTable = {
+		frequency: periods.frequency,
+		periods: periods.periods,
+		columns: kept.map(({ column }) => column),
+		notes: [...notes, ...kept.flatMap((column) => column.notes)]
+	};
+	return { table, periodColumn: source.name, leftOut };
+};
