@@ -101,7 +101,7 @@ describe('transform', () => {
 		[[1, 2, 0, 4, 5, 6, 7, 8], [{ step: 'log' }], 'domain', '2000-Q1'],
 		[[1, 2, 50, 4, 5, 6, 7, 8], [{ step: 'logit' }], 'domain', 'divided by 100'],
 		[[1, 0, 1, 4, 5, 6, 7, 8], [{ step: 'yoy' }], 'domain', '2000-Q4'],
-		[[1, 2, -1, 4, 5, 6, 7, 8], [{ step: 'log-yoy' }], 'domain', '2000-Q3'],
+		[[1, 2, -1, 4, 5, 6, 7, 8], [{ step: 'log-yoy' }], 'domain', '2000-Q1'],
 		[[1, 2, 3, 4, 5, 6, 7, 8], [{ step: 'ratio', column: 'absent' }], 'domain', 'column'],
 		[[1, 2, null, null, null, null, null, null], [{ step: 'yoy' }], 'too-short', 'v'],
 		[Array(8).fill(null), [], 'too-short', 'v']

@@ -2,6 +2,7 @@ import type { Design } from '../series/design';
 import { isRefusal, refuse, type Refusal } from '../refusal';
 import { studentTTwoSided } from '../distributions/student-t';
 import { rowSquares } from '../linalg/orthogonal';
+import { durbinWatson } from './durbin-watson';
 import { leastSquares, type LeastSquares } from './least-squares';
 import { scaledConditionNumber } from './condition';
 
@@ -69,7 +70,7 @@ function withInference(fit: LeastSquares): OlsFit {
 		bic: -2 * loglik + k * Math.log(n),
 		hqic: -2 * loglik + 2 * k * Math.log(Math.log(n)),
 		aicR: -2 * loglik + 2 * (k + 1),
-		dw: durbinWatson(fit.resid, rss),
+		dw: durbinWatson(fit.resid),
 		vcov,
 		conditionNumber: scaledConditionNumber(fit),
 		leverage: rowSquares(fit.basis, n, k)
@@ -89,13 +90,6 @@ function covariance(fit: LeastSquares, sigma: number): Float64Array {
 		}
 	}
 	return v;
-}
-
-/** Sum of squared changes of the residuals over their sum of squares (Durbin & Watson 1950, Biometrika 37). */
-function durbinWatson(resid: Float64Array, rss: number): number {
-	let squares = 0;
-	for (let i = 1; i < resid.length; i++) squares += (resid[i]! - resid[i - 1]!) ** 2;
-	return squares / rss;
 }
 
 /** One coefficient by name. */
