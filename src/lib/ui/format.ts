@@ -46,7 +46,11 @@ export function formatSignificant(value: number, digits = 3, sign = false): stri
 	const rounded = Number(value.toPrecision(digits));
 	const magnitude = Math.floor(Math.log10(Math.abs(rounded)));
 	if (magnitude < -6) return scientific(rounded, digits - 1);
-	return formatNumber(rounded, { decimals: Math.max(0, digits - 1 - magnitude), sign });
+	const decimals = digits - 1 - magnitude;
+	// Digits before the point are never rounded away.
+	return decimals > 0
+		? formatNumber(rounded, { decimals, sign })
+		: formatNumber(value, { decimals: 0, sign });
 }
 
 /** A p-value to three decimals, `< 0.001` below. */

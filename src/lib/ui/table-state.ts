@@ -18,7 +18,7 @@ export interface Column<Row> {
 	readonly choiceLabel?: (value: string) => string;
 	/** Digits after the point of a plain number; none unless said. */
 	readonly decimals?: number;
-	/** Class of the cells: `due`, `name`. */
+	/** Class of the cells: `due`; `wrap` for prose of several lines. */
 	readonly cellClass?: string;
 	readonly cell?: Snippet<[Row]>;
 }

@@ -8,6 +8,7 @@ export interface Box {
 	readonly bottom: number;
 	/** Drawn for a phone: fewer ticks, keys instead of labels at line ends. */
 	readonly narrow: boolean;
+	readonly size: PlotSize;
 }
 
 export interface Margins {
@@ -38,7 +39,8 @@ export function boxOf(size: PlotSize, narrow: boolean, margins: Margins): Box {
 		right: width - margins.right,
 		top: margins.top,
 		bottom: height - margins.bottom,
-		narrow
+		narrow,
+		size
 	};
 }
 
