@@ -124,6 +124,7 @@ const table = {
 	'role.grant': { who: ['admin', 'system'], stepUp: true },
 	'role.propose': pair,
 	'role.approve': pair,
+	'grant.withdraw': { who: ['admin'] },
 	'role.end': { who: ['admin'], stepUp: true },
 	'session.end': { who: ['self'], recovery: true },
 	'session.end-all': { who: ['admin'], stepUp: true },

@@ -26,7 +26,9 @@ const alone: readonly Role[] = ['admin', 'auditor'];
 /** Whether a set of roles and relations can be one person's: admin and auditor stand alone, a head owns nothing. */
 export const compatible = (roles: readonly Role[], parties: readonly Party[]): boolean => {
 	if (roles.some((role) => alone.includes(role))) return roles.length === 1 && parties.length === 0;
-	return !roles.includes('head') || !(roles.includes('owner') || parties.some((party) => party !== 'validator'));
+	return (
+		!roles.includes('head') || !(roles.includes('owner') || parties.some((party) => party !== 'validator'))
+	);
 };
 
 /** S4: admins and auditors hold no other role; the head of model risk is never owner or developer. */

@@ -98,16 +98,34 @@ export const peopleEvents = {
 		1: z.strictObject({ person, session, credential: base64url.optional() })
 	}),
 	'session.closed': event(1, { 1: z.strictObject({ person, session, reason: z.enum(closings) }) }),
+	'sessions.ended': event(1, { 1: z.strictObject({ person }) }),
 	'sign-in.failed': event(1, {
-		1: z.strictObject({ way: z.enum(['passkey', 'recovery', 'seat']), reason: z.enum(failures), person: person.optional() })
+		1: z.strictObject({
+			way: z.enum(['passkey', 'recovery', 'seat']),
+			reason: z.enum(failures),
+			person: person.optional()
+		})
 	}),
 	'access.refused': event(1, {
-		1: z.strictObject({ action: z.string().max(64), rule: z.string().max(64), subject: z.string().max(64).optional() })
+		1: z.strictObject({
+			action: z.string().max(64),
+			rule: z.string().max(64),
+			subject: z.string().max(64).optional()
+		})
 	}),
 	'token.created': event(1, {
-		1: z.strictObject({ person, token: z.string().regex(/^[a-z2-7]{10}$/), scopes: z.array(z.enum(scopes)).min(1), expires: instant })
+		1: z.strictObject({
+			person,
+			token: z.string().regex(/^[a-z2-7]{10}$/),
+			scopes: z.array(z.enum(scopes)).min(1),
+			expires: instant
+		})
 	}),
 	'token.revoked': event(1, {
-		1: z.strictObject({ person, token: z.string().regex(/^[a-z2-7]{10}$/), reason: z.enum(['asked', 'disclosed', 'disabled']) })
+		1: z.strictObject({
+			person,
+			token: z.string().regex(/^[a-z2-7]{10}$/),
+			reason: z.enum(['asked', 'disclosed', 'disabled'])
+		})
 	})
 } as const;

@@ -44,7 +44,11 @@ export interface Assertion {
 	/** The row of the challenge it answered. */
 	readonly challenge: Schema['challenge'];
 	/** As sent, for the entry that keeps the signature. */
-	readonly response: { readonly authenticatorData: string; readonly clientDataJSON: string; readonly signature: string };
+	readonly response: {
+		readonly authenticatorData: string;
+		readonly clientDataJSON: string;
+		readonly signature: string;
+	};
 }
 
 /** What the host is called in the eyes of authenticators: from the settings, never from a header. */
@@ -52,8 +56,10 @@ export const rpIdOf = (config: Config): string => new URL(config.origin).hostnam
 
 const parsed = (text: string): Answer => {
 	const result = answer.safeParse(readAnswer(text));
-	if (!result.success) throw new AuthFault('request', 'The answer lacks a part or holds one of another kind.');
-	if (result.data.id !== result.data.rawId) throw new AuthFault('request', 'The two ids of the answer differ.');
+	if (!result.success)
+		throw new AuthFault('request', 'The answer lacks a part or holds one of another kind.');
+	if (result.data.id !== result.data.rawId)
+		throw new AuthFault('request', 'The two ids of the answer differ.');
 	return result.data;
 };
 
@@ -86,7 +92,12 @@ const checkHandle = (credential: Credential, sent: string | undefined, discovera
 };
 
 /** The signature itself: the library's part. Its own counter rule is switched off; ours never locks anyone out. */
-const checkSignature = async (ctx: Ctx, sent: Answer, credential: Credential, challenge: string): Promise<void> => {
+const checkSignature = async (
+	ctx: Ctx,
+	sent: Answer,
+	credential: Credential,
+	challenge: string
+): Promise<void> => {
 	const { userHandle, ...rest } = sent.response;
 	const result = await verifyAuthenticationResponse({
 		response: {

@@ -24,7 +24,10 @@ const answer = z.object({
 	response: z.object({
 		clientDataJSON: z.string(),
 		attestationObject: z.string(),
-		transports: z.array(z.string().regex(/^[a-z-]{1,32}$/)).max(8).default([])
+		transports: z
+			.array(z.string().regex(/^[a-z-]{1,32}$/))
+			.max(8)
+			.default([])
 	})
 });
 type Answer = z.output<typeof answer>;
@@ -58,7 +61,9 @@ const attestedIn = (bytes: Buffer): Attested => {
 		if (!credentialID || !credentialPublicKey) throw new Error('there is no credential in it');
 		return { authData, id: Buffer.from(credentialID), key: Buffer.from(credentialPublicKey) };
 	} catch (cause) {
-		throw wrong(`The attestation object is unreadable: ${cause instanceof Error ? cause.message : 'broken'}.`);
+		throw wrong(
+			`The attestation object is unreadable: ${cause instanceof Error ? cause.message : 'broken'}.`
+		);
 	}
 };
 
@@ -66,7 +71,10 @@ const checkCredential = (ctx: Ctx, sent: Answer, { id, key }: Attested): number 
 	if (id.length > 1023) throw wrong('The credential id is longer than 1,023 bytes.');
 	if (id.toString('base64url') !== sent.id) throw wrong('Another credential was attested than was named.');
 	const { read } = ctx;
-	if (read.first(credentialById(read.q, sent.id)) || read.first(credentialByKey(read.q, key.toString('base64url'))))
+	if (
+		read.first(credentialById(read.q, sent.id)) ||
+		read.first(credentialByKey(read.q, key.toString('base64url')))
+	)
 		throw wrong('This credential is enrolled already.');
 	try {
 		return publicKeyOf(key).algorithm;

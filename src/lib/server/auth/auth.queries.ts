@@ -4,7 +4,8 @@ import type { Schema } from '$lib/server/db/schema';
 
 type Q = Kysely<Schema>;
 
-export const credentialById = (q: Q, id: string) => q.selectFrom('credential').selectAll().where('id', '=', id);
+export const credentialById = (q: Q, id: string) =>
+	q.selectFrom('credential').selectAll().where('id', '=', id);
 
 export const credentialByKey = (q: Q, publicKey: string) =>
 	q.selectFrom('credential').select('id').where('public_key', '=', publicKey);
@@ -19,9 +20,11 @@ export const liveCredentials = (q: Q, person: PersonId) =>
 		.orderBy('enrolled_at')
 		.orderBy('id');
 
-export const credentialUse = (q: Q, id: string) => q.selectFrom('credential_use').selectAll().where('id', '=', id);
+export const credentialUse = (q: Q, id: string) =>
+	q.selectFrom('credential_use').selectAll().where('id', '=', id);
 
-export const sessionByHash = (q: Q, hash: string) => q.selectFrom('session').selectAll().where('hash', '=', hash);
+export const sessionByHash = (q: Q, hash: string) =>
+	q.selectFrom('session').selectAll().where('hash', '=', hash);
 
 /** A person's sessions, oldest first. */
 export const sessionsOf = (q: Q, person: PersonId) =>
@@ -34,7 +37,8 @@ export const challengeByHash = (q: Q, hash: string) =>
 
 export const staleChallenges = (q: Q, at: string) => q.deleteFrom('challenge').where('expires_at', '<=', at);
 
-export const linkByHash = (q: Q, hash: string) => q.selectFrom('enrolment_link').selectAll().where('hash', '=', hash);
+export const linkByHash = (q: Q, hash: string) =>
+	q.selectFrom('enrolment_link').selectAll().where('hash', '=', hash);
 
 /** Takes a link once: changes one row, or none when it was used or is over. */
 export const useLink = (q: Q, hash: string, at: string) =>
@@ -45,7 +49,8 @@ export const useLink = (q: Q, hash: string, at: string) =>
 		.where('used_at', 'is', null)
 		.where('expires_at', '>', at);
 
-export const passwordOf = (q: Q, person: PersonId) => q.selectFrom('password').selectAll().where('person', '=', person);
+export const passwordOf = (q: Q, person: PersonId) =>
+	q.selectFrom('password').selectAll().where('person', '=', person);
 
 export const unusedCodes = (q: Q, person: PersonId) =>
 	q.selectFrom('recovery_code').selectAll().where('person', '=', person).where('used_at', 'is', null);
@@ -54,7 +59,8 @@ export const unusedCodes = (q: Q, person: PersonId) =>
 export const useCode = (q: Q, hash: string, at: string) =>
 	q.updateTable('recovery_code').set({ used_at: at }).where('hash', '=', hash).where('used_at', 'is', null);
 
-export const seatKeyOf = (q: Q, person: PersonId) => q.selectFrom('seat_key').selectAll().where('person', '=', person);
+export const seatKeyOf = (q: Q, person: PersonId) =>
+	q.selectFrom('seat_key').selectAll().where('person', '=', person);
 
 export const tokenById = (q: Q, id: string) =>
 	q

@@ -37,7 +37,8 @@ export const clientDataOf = (bytes: Buffer): ClientData => {
 /** The challenge in client data: 32 bytes. @throws AuthFault */
 export const challengeIn = (said: ClientData): Buffer => {
 	const challenge = strictBase64url(said.challenge);
-	if (challenge?.length !== 32) throw new AuthFault('challenge', 'The challenge is not 32 bytes in base64url.');
+	if (challenge?.length !== 32)
+		throw new AuthFault('challenge', 'The challenge is not 32 bytes in base64url.');
 	return challenge;
 };
 
@@ -46,7 +47,8 @@ export const checkClientData = (said: ClientData, type: string, origins: readonl
 	if (said.type !== type) throw new AuthFault('client data', `The ceremony is ${said.type}, not ${type}.`);
 	if (!origins.includes(said.origin)) throw new AuthFault('client data', 'The origin is not this register.');
 	if (said.crossOrigin === true) throw new AuthFault('client data', 'The page stood inside another origin.');
-	if (said.topOrigin !== undefined) throw new AuthFault('client data', 'The page stood under another origin.');
+	if (said.topOrigin !== undefined)
+		throw new AuthFault('client data', 'The page stood under another origin.');
 };
 
 /** What authenticator data say before any credential in them. */

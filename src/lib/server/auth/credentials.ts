@@ -1,5 +1,6 @@
 import type { Actor, PersonId } from '$lib/domain/actor';
 import type { Grant, StepUp } from '$lib/domain/entry';
+import type { Payload } from '$lib/domain/events';
 import { Absent, Conflict } from '$lib/domain/faults';
 import type { Ctx } from '$lib/server/context';
 import type { Tx } from '$lib/server/db/handle';
@@ -12,30 +13,44 @@ import { credentialById, credentialUse, liveCredentials } from './auth.queries';
 /** A person holds at most this many passkeys. */
 export const mostPasskeys = 8;
 
+/** What the log says of a credential. */
+export const credentialPayload = (
+	person: PersonId,
+	kind: 'passkey' | 'seat',
+	handle: Buffer,
+	{ id, publicKey, algorithm, backupEligible, backedUp, aaguid, transports }: NewPasskey
+): Payload<'credential.enrolled'> => ({
+	person,
+	credential: id,
+	kind,
+	publicKey,
+	algorithm,
+	handle: handle.toString('base64url'),
+	backupEligible,
+	backedUp,
+	aaguid,
+	transports: [...transports]
+});
+
 /** Enters a verified passkey. @throws Conflict beyond eight */
 export const enrolCredential = (
 	ctx: Ctx,
 	tx: Tx,
 	actor: Actor,
 	grant: Grant,
-	person: PersonId,
-	passkey: NewPasskey & { readonly kind: 'passkey' | 'seat'; readonly handle: Buffer },
+	payload: Payload<'credential.enrolled'>,
+	counter: number,
 	stepUp?: StepUp
 ): void => {
-	if (tx.all(liveCredentials(tx.q, person)).length >= mostPasskeys)
+	if (tx.all(liveCredentials(tx.q, payload.person as PersonId)).length >= mostPasskeys)
 		throw new Conflict(`A person holds at most ${mostPasskeys} passkeys; revoke one first.`);
-	const { id, counter, handle, transports, ...rest } = passkey;
-	tx.insert('credential_use', { id, counter, used_at: null });
+	if (tx.first(credentialById(tx.q, payload.credential)))
+		throw new Conflict('This passkey is enrolled already.');
+	tx.insert('credential_use', { id: payload.credential, counter, used_at: null });
 	record(ctx, tx, actor, grant, {
 		type: 'credential.enrolled',
-		subjects: [person],
-		payload: {
-			...rest,
-			person,
-			credential: id,
-			handle: handle.toString('base64url'),
-			transports: [...transports]
-		},
+		subjects: [payload.person],
+		payload,
 		...(stepUp ? { stepUp } : {})
 	});
 };
@@ -76,9 +91,15 @@ export const noteUse = (ctx: Ctx, tx: Tx, actor: Actor, { person, credential, fl
 		{ counter: Math.max(stored, received), used_at: ctx.now().toISOString() }
 	);
 	if (received > stored || (received === 0 && stored === 0)) return;
-	record(ctx, tx, actor, { rule: 'counter' }, {
-		type: 'credential.counter-fell',
-		subjects: [person],
-		payload: { person, credential, stored, received }
-	});
+	record(
+		ctx,
+		tx,
+		actor,
+		{ rule: 'counter' },
+		{
+			type: 'credential.counter-fell',
+			subjects: [person],
+			payload: { person, credential, stored, received }
+		}
+	);
 };

@@ -10,7 +10,11 @@ import { secretHash } from './secret';
 type Link = Schema['enrolment_link'];
 
 /** How long each kind lives, in minutes. */
-const lifetime: Readonly<Record<Link['kind'], number>> = { invitation: 3 * 24 * 60, first: 24 * 60, recovery: 30 };
+const lifetime: Readonly<Record<Link['kind'], number>> = {
+	invitation: 3 * 24 * 60,
+	first: 24 * 60,
+	recovery: 30
+};
 
 /** Makes a one-time link of 256 bits; earlier ones of the person die, and only the digest is stored. */
 export const makeLink = (ctx: Ctx, tx: Tx, person: PersonId, kind: Link['kind']): string => {

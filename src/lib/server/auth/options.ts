@@ -1,7 +1,7 @@
 import {
 	generateAuthenticationOptions,
 	generateRegistrationOptions,
-	type AuthenticatorTransportFuture,
+	type AuthenticatorTransport,
 	type PublicKeyCredentialCreationOptionsJSON,
 	type PublicKeyCredentialRequestOptionsJSON
 } from '@simplewebauthn/server';
@@ -15,13 +15,13 @@ import { issueChallenge } from './challenge';
 
 const timeout = 300_000;
 
-const named = (ctx: Ctx, person: PersonId): { id: string; transports: AuthenticatorTransportFuture[] }[] =>
+const named = (ctx: Ctx, person: PersonId): { id: string; transports: AuthenticatorTransport[] }[] =>
 	ctx.read
 		.all<Schema['credential']>(liveCredentials(ctx.read.q, person))
 		.filter(({ kind }) => kind === 'passkey')
 		.map(({ id, transports }) => ({
 			id,
-			transports: JSON.parse(transports) as AuthenticatorTransportFuture[]
+			transports: JSON.parse(transports) as AuthenticatorTransport[]
 		}));
 
 /** What a browser needs to sign in: no account is named, so the answer tells nothing about who exists. */

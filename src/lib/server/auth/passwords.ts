@@ -1,10 +1,11 @@
-import { Algorithm, hash, verify } from '@node-rs/argon2';
+import { hash, verify } from '@node-rs/argon2';
 import { Invalid } from '$lib/domain/faults';
 import { AuthFault } from './fault';
 import { isCommon } from './common-passwords';
 
 /** argon2id with 64 MiB and three passes: above OWASP's least of 19 MiB and two. */
-const cost = { algorithm: Algorithm.Argon2id, memoryCost: 65_536, timeCost: 3, parallelism: 1 } as const;
+const argon2id = 2;
+const cost = { algorithm: argon2id, memoryCost: 65_536, timeCost: 3, parallelism: 1 } as const;
 
 const least = 15;
 const most = 128;
@@ -14,7 +15,13 @@ const normal = (password: string): string => password.normalize('NFKC');
 
 /** Parts of a name or address that a password must not hold: words of four letters and more. */
 const wordsOf = (texts: readonly string[]): string[] =>
-	texts.flatMap((text) => normal(text).toLowerCase().split(/[^\p{L}\p{N}]+/u)).filter((word) => word.length >= 4);
+	texts
+		.flatMap((text) =>
+			normal(text)
+				.toLowerCase()
+				.split(/[^\p{L}\p{N}]+/u)
+		)
+		.filter((word) => word.length >= 4);
 
 /**
  * Refuses a weak password: length after NFKC only, no rules of composition (NIST SP 800-63B-4, section 3.1.1.2).

@@ -45,10 +45,7 @@ export const makeCodes = (
 };
 
 /** The stored digest a typed code answers to, if any. Every unused code is compared, found or not. */
-export const codeMatches = (
-	rows: readonly Schema['recovery_code'][],
-	typed: string
-): string | undefined => {
+export const codeMatches = (rows: readonly Schema['recovery_code'][], typed: string): string | undefined => {
 	const code = plain(typed);
 	return rows.map(({ salt, hash }) => (hashed(salt, code) === hash ? hash : undefined)).find(Boolean);
 };

@@ -38,7 +38,11 @@ export const makeSeatKey = (tx: Tx, person: PersonId): NewPasskey => {
 };
 
 /** Signs a statement in the form an authenticator would, so that one verifier reads both. */
-export const signAsSeat = (config: Config, { key, credential }: Schema['seat_key'], statement: string): StepUp => {
+export const signAsSeat = (
+	config: Config,
+	{ key, credential }: Schema['seat_key'],
+	statement: string
+): StepUp => {
 	const clientData = Buffer.from(
 		JSON.stringify({
 			type: 'webauthn.get',

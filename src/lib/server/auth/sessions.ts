@@ -36,13 +36,20 @@ type Row = Schema['session'];
 /** A person holds at most this many sessions; the oldest ends. */
 const mostSessions = 5;
 
-const closeRow = (ctx: Ctx, tx: Tx, row: Row, actor: Actor, reason: Closing): void => {
+/** Ends a session and enters it, inside a transaction. */
+export const closeSession = (ctx: Ctx, tx: Tx, row: Row, actor: Actor, reason: Closing): void => {
 	tx.remove('session', { hash: row.hash });
-	record(ctx, tx, actor, { rule: 'session.end' }, {
-		type: 'session.closed',
-		subjects: [row.person],
-		payload: { person: row.person, session: row.label, reason }
-	});
+	record(
+		ctx,
+		tx,
+		actor,
+		{ rule: 'session.end' },
+		{
+			type: 'session.closed',
+			subjects: [row.person],
+			payload: { person: row.person, session: row.label, reason }
+		}
+	);
 };
 
 /** Which limit a session has passed at an instant, if any. */
@@ -74,7 +81,7 @@ const insert = (ctx: Ctx, { id, userId: person, attributes }: DatabaseSession): 
 	ctx.write((tx) => {
 		const rows = tx.all<Row>(sessionsOf(tx.q, person));
 		for (const row of rows.slice(0, Math.max(0, rows.length + 1 - mostSessions)))
-			closeRow(ctx, tx, row, system(request), 'too many');
+			closeSession(ctx, tx, row, system(request), 'too many');
 		tx.insert('session', {
 			hash: secretHash(id),
 			label,
@@ -86,11 +93,17 @@ const insert = (ctx: Ctx, { id, userId: person, attributes }: DatabaseSession): 
 			agent
 		});
 		const actor: Actor = { person, means, roles: [], request };
-		record(ctx, tx, actor, { rule: 'session.open' }, {
-			type: 'session.opened',
-			subjects: [person],
-			payload: { person, session: label, ...(credential ? { credential } : {}) }
-		});
+		record(
+			ctx,
+			tx,
+			actor,
+			{ rule: 'session.open' },
+			{
+				type: 'session.opened',
+				subjects: [person],
+				payload: { person, session: label, ...(credential ? { credential } : {}) }
+			}
+		);
 	});
 };
 
@@ -106,12 +119,15 @@ const find = (ctx: Ctx, token: string): Row | undefined => {
 	if (over) {
 		ctx.write((tx) => {
 			// Another request may have closed it since it was read.
-			if (tx.first(sessionByHash(tx.q, hash))) closeRow(ctx, tx, row, system('session'), over);
+			if (tx.first(sessionByHash(tx.q, hash))) closeSession(ctx, tx, row, system('session'), over);
 		});
 		return undefined;
 	}
 	if (now.getTime() - Date.parse(row.seen_at) >= touchAfter)
-		ctx.write((tx) => void tx.run(tx.q.updateTable('session').set({ seen_at: now.toISOString() }).where('hash', '=', hash)));
+		ctx.write(
+			(tx) =>
+				void tx.run(tx.q.updateTable('session').set({ seen_at: now.toISOString() }).where('hash', '=', hash))
+		);
 	return row;
 };
 
@@ -171,7 +187,7 @@ export const sessionOf = async (ctx: Ctx, token: string): Promise<Session | null
 export const endSession = (ctx: Ctx, hash: string, actor: Actor, reason: Closing): void => {
 	ctx.write((tx) => {
 		const row = tx.first<Row>(sessionByHash(tx.q, hash));
-		if (row) closeRow(ctx, tx, row, actor, reason);
+		if (row) closeSession(ctx, tx, row, actor, reason);
 	});
 };
 
@@ -185,7 +201,7 @@ export const closeSessions = (
 	keep?: string
 ): void => {
 	for (const row of tx.all<Row>(sessionsOf(tx.q, person)))
-		if (row.hash !== keep) closeRow(ctx, tx, row, actor, reason);
+		if (row.hash !== keep) closeSession(ctx, tx, row, actor, reason);
 };
 
 /** Ends every session that has passed a limit; for the ticker. */
@@ -195,6 +211,7 @@ export const sweepSessions = (ctx: Ctx): void => {
 	if (over.length === 0) return;
 	ctx.write((tx) => {
 		for (const row of over)
-			if (tx.first(sessionByHash(tx.q, row.hash))) closeRow(ctx, tx, row, system('ticker'), overBy(row, now)!);
+			if (tx.first(sessionByHash(tx.q, row.hash)))
+				closeSession(ctx, tx, row, system('ticker'), overBy(row, now)!);
 	});
 };

@@ -148,7 +148,11 @@ export const takeStepUp = async (ctx: Ctx, actor: Actor, answer: StepUpAnswer): 
 		return await byPasskey(ctx, actor, actor.session!, answer.response);
 	} catch (fault) {
 		if (!(fault instanceof AuthFault)) throw fault;
-		throw new Refused('step-up', 'step-up', `Not signed: ${fault.message} Open the page again and sign afresh.`);
+		throw new Refused(
+			'step-up',
+			'step-up',
+			`Not signed: ${fault.message} Open the page again and sign afresh.`
+		);
 	}
 };
 

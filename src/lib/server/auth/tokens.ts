@@ -10,8 +10,7 @@ import { randomText, secretHash } from './secret';
 const form = /^kbt_([a-z2-7]{10})_([A-Za-z0-9_-]{43})_([a-z2-7]{6})$/;
 
 /** Finds mistyped and cut tokens, and makes scanning for disclosed ones safe. */
-const checksum = (body: string): string =>
-	base32(createHash('sha256').update(body).digest()).slice(0, 6);
+const checksum = (body: string): string => base32(createHash('sha256').update(body).digest()).slice(0, 6);
 
 /** A new public id; the secret is made when the token is entered. */
 export const newTokenId = (): string => randomText(10).slice(0, 10);
@@ -32,7 +31,9 @@ export const tokenIdIn = (token: string): string | undefined => {
 
 /** The first well-formed token anywhere in a text: one that stands in an address or a body is disclosed. */
 export const tokenWithin = (text: string): string | undefined =>
-	text.match(/kbt_[a-z2-7]{10}_[A-Za-z0-9_-]{43}_[a-z2-7]{6}/g)?.find((token) => tokenIdIn(token) !== undefined);
+	text
+		.match(/kbt_[a-z2-7]{10}_[A-Za-z0-9_-]{43}_[a-z2-7]{6}/g)
+		?.find((token) => tokenIdIn(token) !== undefined);
 
 export interface PresentedToken {
 	readonly id: string;

@@ -1,4 +1,4 @@
-import type { Kysely } from 'kysely';
+import { sql, type Kysely } from 'kysely';
 import type { PersonId } from '$lib/domain/actor';
 import type { Schema } from '$lib/server/db/schema';
 
@@ -16,6 +16,15 @@ export const rolesAt = (q: Q, person: PersonId, at: string) =>
 		.where('from_at', '<=', at)
 		.where((e) => e.or([e('until_at', 'is', null), e('until_at', '>', at)]))
 		.orderBy('role');
+
+/** Grants of one role that are open at an instant. */
+export const grantInForce = (q: Q, person: string, role: string, at: string) =>
+	q
+		.selectFrom('role_grant')
+		.selectAll()
+		.where('person', '=', person)
+		.where('role', '=', role)
+		.where((e) => e.or([e('until_at', 'is', null), e('until_at', '>', at)]));
 
 /** Every grant a person ever had, newest first. */
 export const grantsOf = (q: Q, person: PersonId) =>
@@ -59,6 +68,21 @@ export const directoryEntry = (q: Q, person: PersonId) =>
 	q.selectFrom('person').selectAll().where('id', '=', person);
 
 export const directory = (q: Q) => q.selectFrom('person').select(['id', 'name', 'mail', 'staff_number']);
+
+export const byMail = (q: Q, mail: string) =>
+	q
+		.selectFrom('person')
+		.selectAll()
+		.where(sql`lower(mail)`, '=', mail.toLowerCase());
+
+export const enrolledSeats = (q: Q) =>
+	q
+		.selectFrom('credential')
+		.select('person')
+		.where('kind', '=', 'seat')
+		.where('revoked_at', 'is', null)
+		.orderBy('enrolled_at')
+		.orderBy('entry');
 
 export const namesOf = (q: Q, ids: readonly string[]) =>
 	q
