@@ -13,13 +13,8 @@ export const logEvents = {
 			institution: z.string()
 		})
 	}),
+	/** Which program serves the register from here on. */
 	'app.started': event(1, {
-		1: z.strictObject({
-			version: z.string(),
-			engine: z.string(),
-			node: z.string(),
-			sqlite: z.string(),
-			schema: z.number()
-		})
+		1: z.strictObject({ version: z.string(), node: z.string(), platform: z.string() })
 	})
 } as const;

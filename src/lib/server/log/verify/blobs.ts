@@ -6,11 +6,15 @@ import { payloadSchema } from '../record';
 import type { Findings } from './report';
 import type { Source } from './source';
 
+/** What an optional, read-only or defaulted schema wraps. */
+const innerOf = (schema: z.core.$ZodType): z.core.$ZodType | undefined =>
+	(schema._zod.def as { readonly innerType?: z.core.$ZodType }).innerType;
+
 /** The digests of blobs in a value, found where its schema says so. */
 const named = function* (schema: z.core.$ZodType, value: unknown): Generator<string> {
 	if (value === undefined || value === null) return;
 	if (blobSchemas.has(schema)) yield value as string;
-	else if (schema instanceof z.ZodOptional) yield* named(schema.unwrap(), value);
+	else if (innerOf(schema)) yield* named(innerOf(schema)!, value);
 	else if (schema instanceof z.ZodArray)
 		for (const item of value as unknown[]) yield* named(schema.element, item);
 	else if (schema instanceof z.ZodObject)
