@@ -59,7 +59,7 @@ const askWhere = (rows: readonly GridRow[]): void => {
 	const [first, second, third] = rows;
 	if (!first || !second) return;
 	const table = rows.find((row) => filled(row) >= 2);
-	if (filled(first) === 1 && table && table !== first)
+	if (filled(first) === 1 && !blank(first.cells[0]) && table && table !== first)
 		reject('layout', [`Row ${first.row} looks like a title`], { row: first.row }, askRow(rows, table.row));
 	if (first.cells.every((cell) => !blank(cell) && looksLikeData(cell)))
 		reject('no-header', [], { row: first.row }, askRow(rows, 0));
