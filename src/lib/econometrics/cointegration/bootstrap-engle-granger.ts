@@ -1,11 +1,12 @@
 import { isRefusal, refuse, type Refusal } from '../refusal';
-import { mean } from '../linalg/vectors';
+import { centred } from '../linalg/vectors';
 import { projectOff } from '../linalg/orthogonal';
 import { mulberry32 } from '../random/mulberry32';
 import { leastSquares } from '../regression/least-squares';
 import { designOf } from '../series/design';
+import { difference } from '../series/lags';
 import { dickeyFuller } from '../unit-root/adf';
-import { sequentialFit, leadingRss } from '../unit-root/sequential-fit';
+import { leadingRss, sequentialFit } from '../unit-root/sequential-fit';
 import { staticDesign, type StaticModel } from './engle-granger';
 import { quantile } from './quantile';
 import { SmallRegression } from './small-regression';
@@ -84,11 +85,11 @@ export function bootstrapEngleGranger(
 
 /** Changes of `u` on their own lags without a constant; the residuals are centred. */
 function fitSieve(u: Float64Array, lags: number): { gamma: Float64Array; resid: Float64Array } | Refusal {
-	const du = u.slice(1).map((value, i) => value - u[i]!);
+	const du = difference(u);
 	const y = du.slice(lags);
-	if (lags === 0) return { gamma: new Float64Array(0), resid: centre(y) };
+	if (lags === 0) return { gamma: new Float64Array(0), resid: centred(y) };
 	const fit = leastSquares(y, designOf(lagColumns(du, lags, lags)));
-	return isRefusal(fit) ? fit : { gamma: fit.coef, resid: centre(fit.resid) };
+	return isRefusal(fit) ? fit : { gamma: fit.coef, resid: centred(fit.resid) };
 }
 
 function lagColumns(du: Float64Array, lags: number, from: number) {
@@ -96,11 +97,6 @@ function lagColumns(du: Float64Array, lags: number, from: number) {
 		name: `lag ${l + 1}`,
 		column: du.slice(from - l - 1, du.length - l - 1)
 	}));
-}
-
-function centre(v: Float64Array): Float64Array {
-	const m = mean(v);
-	return v.map((value) => value - m);
 }
 
 /** The observed start, then changes from the autoregression and drawn residuals, cumulated. */
@@ -134,7 +130,7 @@ function dickeyFullerT(u: Float64Array, lags: number, regression: SmallRegressio
 
 /** Order of the autoregression by BIC over 0 .. floor(4 (T/100)^(1/4)) on one sample. */
 export function sieveOrder(gap: Float64Array): number | Refusal {
-	const du = gap.slice(1).map((value, i) => value - gap[i]!);
+	const du = difference(gap);
 	const most = Math.floor(4 * Math.sqrt(Math.sqrt(gap.length / 100)));
 	if (most === 0) return 0;
 	const columns = lagColumns(du, most, most);

@@ -1,5 +1,6 @@
 import { isRefusal, refuse, type Refusal } from '../refusal';
 import { ols, type OlsFit } from '../regression/ols';
+import { constant, trend } from '../series/deterministic';
 import { designOf, type Design, type Regressor } from '../series/design';
 import { dickeyFuller } from '../unit-root/adf';
 import { searchLags, type LagSearch } from '../unit-root/adf-auto';
@@ -76,9 +77,8 @@ export const hasStep = (model: StaticModel): boolean =>
 export function staticDesign({ y, det, drivers, dummies }: StaticModel): Design {
 	const T = y.length;
 	const deterministic: Regressor[] = [];
-	if (det !== 'n') deterministic.push({ name: 'const', column: new Float64Array(T).fill(1) });
-	if (det === 'ct')
-		deterministic.push({ name: 'trend', column: Float64Array.from({ length: T }, (_, i) => i + 1) });
+	if (det !== 'n') deterministic.push(constant(T));
+	if (det === 'ct') deterministic.push(trend(1, T));
 	return designOf([...deterministic, ...drivers, ...(dummies ?? [])]);
 }
 

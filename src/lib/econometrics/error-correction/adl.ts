@@ -1,4 +1,5 @@
-import { indexOf, valueOf, type Coefficients, type Term } from './terms';
+import { driversOf, largestLagOf } from './lag-coefficients';
+import type { Coefficients, Term } from './terms';
 
 /**
  * The same equation in two dresses. Error-correction form: dy(t) on y(t-1), x(t-1), dy(t-i), dx(t-l). Levels form
@@ -18,22 +19,6 @@ export const toLevels = (ecm: Coefficients): Coefficients => apply(levelsMap(ecm
 
 /** The error-correction form of an equation in levels; lags that the levels form lacks count as 0. */
 export const toErrorCorrection = (adl: Coefficients): Coefficients => apply(errorCorrectionMap(adl), adl);
-
-/** Sum of the own lags of a levels form; one less it is the speed of adjustment. */
-export const sumOfOwnLags = (adl: Coefficients): number =>
-	adl.terms.reduce((sum, term, i) => (term.kind === 'own-level' ? sum + adl.values[i]! : sum), 0);
-
-/** Drivers in the order of their first term. */
-export function driversOf(terms: readonly Term[]): readonly string[] {
-	const names = terms.flatMap((term) =>
-		term.kind === 'driver-level' || term.kind === 'driver-change' ? [term.series] : []
-	);
-	return [...new Set(names)];
-}
-
-/** Largest lag among the terms that satisfy `test`, -1 where there is none. */
-export const largestLagOf = (terms: readonly Term[], test: (term: Term) => boolean): number =>
-	Math.max(-1, ...terms.filter(test).map((term) => ('lag' in term ? term.lag : -1)));
 
 function levelsMap(ecm: Coefficients): AffineMap {
 	const { terms } = ecm;
@@ -142,48 +127,4 @@ function transformed(matrix: readonly (readonly number[])[], v: Float64Array): F
 		}
 	}
 	return out;
-}
-
-/** Autoregressive coefficients mu(1), mu(2), .. of a levels form, dense. */
-export function ownLags(adl: Coefficients): Float64Array {
-	const last = largestLagOf(adl.terms, (term) => term.kind === 'own-level');
-	return Float64Array.from({ length: last }, (_, i) =>
-		valueOf(adl, (term) => term.kind === 'own-level' && term.lag === i + 1)
-	);
-}
-
-/** Coefficients delta(0), delta(1), .. of a driver in a levels form, dense. */
-export function driverLags(adl: Coefficients, series: string): Float64Array {
-	const of = (lag: number) => (term: Term) =>
-		term.kind === 'driver-level' && term.series === series && term.lag === lag;
-	const last = largestLagOf(adl.terms, (term) => term.kind === 'driver-level' && term.series === series);
-	return Float64Array.from({ length: last + 1 }, (_, l) => valueOf(adl, of(l)));
-}
-
-/**
- * The error-correction form with free levels of an equation around a gap: y(t-1) takes the coefficient on the
- * gap, each driver of the relation minus that times its slope. The covariance is left out, for the relation's own
- * is not in it.
- */
-export function withLevels(
-	gapForm: Coefficients,
-	relation: { readonly slopes: readonly { readonly series: string; readonly value: number }[] }
-): Coefficients {
-	const at = indexOf(gapForm, (term) => term.kind === 'gap');
-	const weight = gapForm.values[at]!;
-	const rest = gapForm.terms.flatMap((term, i) => (i === at ? [] : [{ term, value: gapForm.values[i]! }]));
-	const levels: { term: Term; value: number }[] = [
-		{ term: { kind: 'own-level', lag: 1 }, value: weight },
-		...relation.slopes.map(({ series, value }) => ({
-			term: { kind: 'driver-level', series, lag: 1 } as const,
-			value: -weight * value
-		}))
-	];
-	const all = [...levels, ...rest];
-	return Object.freeze({
-		terms: Object.freeze(all.map((part) => part.term)),
-		values: Float64Array.from(all, (part) => part.value),
-		covariance: null,
-		df: gapForm.df
-	});
 }

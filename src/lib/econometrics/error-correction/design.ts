@@ -1,5 +1,6 @@
 import { refuse, type Refusal } from '../refusal';
 import { designOf, type Design } from '../series/design';
+import { lagged, laggedDifference } from '../series/lags';
 import {
 	longRunDummies,
 	shortRunDummies,
@@ -66,28 +67,27 @@ function equationColumns(
 	const rows = sample.T - m - 1;
 	const build = (value: (t: number) => number) =>
 		Float64Array.from({ length: rows }, (_, r) => value(m + 2 + r));
-	// v(t - lag) for period t counted from 1.
-	const lagged = (v: Float64Array, lag: number) => v.slice(m + 1 - lag, sample.T - lag);
+	const back = (v: Float64Array, by: number) => lagged(v, by, m + 1, sample.T - 1);
 	const levels = form === 'levels';
 	const columns: Column[] = [];
 	if (equation.shortRun.constant || (levels && equation.longRun.constant))
 		columns.push({ term: { kind: 'constant' }, values: build(() => 1) });
 	if (levels && equation.longRun.trend) columns.push({ term: { kind: 'trend' }, values: build((t) => t) });
 	for (const { name, values } of shortRunDummies(equation))
-		columns.push({ term: { kind: 'dummy', name }, values: lagged(values, 0) });
+		columns.push({ term: { kind: 'dummy', name }, values: back(values, 0) });
 	if (levels) {
 		columns.push({
 			term: { kind: 'own-level', lag: 1 },
-			values: lagged(sample.series.get(equation.dependent)!, 1)
+			values: back(sample.series.get(equation.dependent)!, 1)
 		});
 		for (const series of equation.longRun.drivers)
 			columns.push({
 				term: { kind: 'driver-level', series, lag: 1 },
-				values: lagged(sample.series.get(series)!, 1)
+				values: back(sample.series.get(series)!, 1)
 			});
 		for (const { name, values } of longRunDummies(equation))
-			columns.push({ term: { kind: 'level-dummy', name }, values: lagged(values, 1) });
-	} else if (form !== 'none') columns.push({ term: { kind: 'gap' }, values: lagged(form.gap, 1) });
+			columns.push({ term: { kind: 'level-dummy', name }, values: back(values, 1) });
+	} else if (form !== 'none') columns.push({ term: { kind: 'gap' }, values: back(form.gap, 1) });
 	return [...columns, ...shortRunColumns(equation, sample, m)];
 }
 
@@ -107,11 +107,8 @@ function shortRunColumns(equation: Equation, sample: Sample, m: number): readonl
 }
 
 /** v(t-lag) - v(t-lag-1) for t = m+2 .. T. */
-function change(v: Float64Array, m: number, lag = 0): Float64Array {
-	const z = new Float64Array(v.length - m - 1);
-	for (let r = 0; r < z.length; r++) z[r] = v[m + 1 - lag + r]! - v[m - lag + r]!;
-	return z;
-}
+const change = (v: Float64Array, m: number, lag = 0): Float64Array =>
+	laggedDifference(v, lag, m + 1, v.length - 1);
 
 function splitFixed(
 	fixed: readonly FixedCoefficient[],

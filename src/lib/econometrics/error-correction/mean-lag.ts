@@ -1,4 +1,4 @@
-import { driverLags, ownLags } from './adl';
+import { driverLags, ownLags } from './lag-coefficients';
 import { cumulativeMultipliers } from './multipliers';
 import type { Coefficients } from './terms';
 

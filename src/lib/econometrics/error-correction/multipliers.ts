@@ -1,4 +1,4 @@
-import { driverLags, ownLags } from './adl';
+import { driverLags, ownLags } from './lag-coefficients';
 import type { Coefficients } from './terms';
 
 /**

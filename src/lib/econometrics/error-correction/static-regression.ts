@@ -1,5 +1,6 @@
 import { isRefusal, refuse, type Refusal } from '../refusal';
 import { ols, type OlsFit } from '../regression/ols';
+import { constant, trend } from '../series/deterministic';
 import { designOf, type Regressor } from '../series/design';
 import { longRunDummies, type Equation, type Relation, type Sample } from './equation';
 
@@ -17,10 +18,8 @@ export function staticRegression(equation: Equation, sample: Sample): OlsFit | R
 /** Constant, trend, drivers and dummies of the long run, one row a period. */
 export function longRunRegressors(equation: Equation, sample: Sample): readonly Regressor[] | Refusal {
 	const regressors: Regressor[] = [];
-	if (equation.longRun.constant)
-		regressors.push({ name: 'const', column: new Float64Array(sample.T).fill(1) });
-	if (equation.longRun.trend)
-		regressors.push({ name: 'trend', column: Float64Array.from({ length: sample.T }, (_, i) => i + 1) });
+	if (equation.longRun.constant) regressors.push(constant(sample.T));
+	if (equation.longRun.trend) regressors.push(trend(1, sample.T));
 	for (const series of equation.longRun.drivers) {
 		const column = sample.series.get(series);
 		if (column === undefined) return refuse('domain', `the sample has no series ${series}`);
@@ -32,13 +31,12 @@ export function longRunRegressors(equation: Equation, sample: Sample): readonly 
 
 /** The relation a static regression estimated. Its columns stand in the order of longRunRegressors. */
 export function staticRelation(equation: Equation, fit: OlsFit): Relation {
-	const { constant, trend, drivers } = equation.longRun;
 	let at = 0;
 	const next = () => fit.coef[at++]!;
 	return Object.freeze({
-		constant: constant ? next() : 0,
-		trend: trend ? next() : 0,
-		slopes: drivers.map((series) => Object.freeze({ series, value: next() })),
+		constant: equation.longRun.constant ? next() : 0,
+		trend: equation.longRun.trend ? next() : 0,
+		slopes: equation.longRun.drivers.map((series) => Object.freeze({ series, value: next() })),
 		dummies: longRunDummies(equation).map(({ name }) => Object.freeze({ name, value: next() }))
 	});
 }

@@ -1,3 +1,4 @@
+import { difference } from '../series/lags';
 import type { Deterministic } from './mackinnon';
 
 /** The pieces of a Dickey-Fuller regression of dv(i) on deterministic terms, v(i) and lags of dv. */
@@ -24,8 +25,7 @@ export function adfRegression(
 	lags: number,
 	from: number
 ): AdfRegression {
-	const z = new Float64Array(v.length - 1);
-	for (let i = 0; i < z.length; i++) z[i] = v[i + 1]! - v[i]!;
+	const z = difference(v);
 	const rows = z.length - from;
 	const column = (name: string, value: (i: number) => number): Column => {
 		const values = new Float64Array(rows);

@@ -1,9 +1,8 @@
-import { mean } from '../linalg/vectors';
+import { centred } from '../linalg/vectors';
 
 /** `v` less its mean (c), or less its least-squares line in time (ct). */
 export function detrend(v: Float64Array, det: 'c' | 'ct'): Float64Array {
-	const level = mean(v);
-	const e = v.map((value) => value - level);
+	const e = centred(v);
 	if (det === 'c') return e;
 	const middle = (v.length - 1) / 2;
 	let slope = 0;

@@ -1,5 +1,6 @@
 import { isRefusal, type Refusal } from '../refusal';
 import { leastSquares } from '../regression/least-squares';
+import { constant, trend } from '../series/deterministic';
 import { designOf, type Regressor } from '../series/design';
 import { dickeyFuller, refuseSeries } from './adf';
 import { mackinnonP, type CriticalValues } from './mackinnon';
@@ -47,9 +48,8 @@ export function dfGls(
 	if (refusal) return refusal;
 	const T = v.length;
 	const root = 1 - (det === 'c' ? 7 : 13.5) / T;
-	const columns: Regressor[] = [{ name: 'const', column: new Float64Array(T).fill(1) }];
-	if (det === 'ct')
-		columns.push({ name: 'trend', column: Float64Array.from({ length: T }, (_, i) => i + 1) });
+	const columns: Regressor[] = [constant(T)];
+	if (det === 'ct') columns.push(trend(1, T));
 	const quasi = columns.map(({ name, column }) => ({ name, column: quasiDifference(column, root) }));
 	const fit = leastSquares(quasiDifference(v, root), designOf(quasi));
 	if (isRefusal(fit)) return fit;

@@ -1,5 +1,6 @@
 import { isRefusal, refuse, type Refusal } from '../refusal';
 import { leastSquares } from '../regression/least-squares';
+import { constant, trend } from '../series/deterministic';
 import { designOf, type Regressor } from '../series/design';
 import { refuseSeries } from './adf';
 import { longRunVariance } from './long-run-variance';
@@ -36,9 +37,8 @@ export function phillipsPerron(
 	const n = v.length - 1;
 	if (!Number.isInteger(lag) || lag < 0 || lag >= n)
 		return refuse('lag', `truncation lag ${lag} of ${n} rows`);
-	const regressors: Regressor[] = [{ name: 'const', column: new Float64Array(n).fill(1) }];
-	if (det === 'ct')
-		regressors.push({ name: 'trend', column: Float64Array.from({ length: n }, (_, i) => i + 1) });
+	const regressors: Regressor[] = [constant(n)];
+	if (det === 'ct') regressors.push(trend(1, n));
 	regressors.push({ name: 'level', column: v.slice(0, n) });
 	const fit = leastSquares(v.slice(1), designOf(regressors));
 	if (isRefusal(fit)) return fit;

@@ -1,6 +1,6 @@
 import { refuse, type Refusal } from '../refusal';
 import { applyTransposedQ, factorise } from '../linalg/householder';
-import { mean } from '../linalg/vectors';
+import { centred, norm, sumOfSquares } from '../linalg/vectors';
 
 /** Least squares seen column by column: what each regressor adds after those before it. */
 export interface SequentialFit {
@@ -41,7 +41,8 @@ export function sequentialFit(
 	applyTransposedQ(factor, rotated);
 	let rss = 0;
 	for (let i = k; i < n; i++) rss += rotated[i]! * rotated[i]!;
-	if (rss <= 1e-20 * totalSquares(y)) return refuse('perfect-fit', 'the regressors fit the series exactly');
+	if (rss <= 1e-20 * sumOfSquares(centred(y)))
+		return refuse('perfect-fit', 'the regressors fit the series exactly');
 	const diagonal = factor.diagonal[k - 1]!;
 	const sigma = Math.sqrt(rss / (n - k));
 	const coordinates = rotated.slice(0, k);
@@ -58,17 +59,4 @@ export function leadingRss(fit: SequentialFit, columns: number): number {
 	let rss = fit.rss;
 	for (let j = fit.k - 1; j >= columns; j--) rss += fit.coordinates[j]! ** 2;
 	return rss;
-}
-
-function norm(v: Float64Array): number {
-	let squares = 0;
-	for (let i = 0; i < v.length; i++) squares += v[i]! * v[i]!;
-	return Math.sqrt(squares);
-}
-
-function totalSquares(v: Float64Array): number {
-	const m = mean(v);
-	let squares = 0;
-	for (let i = 0; i < v.length; i++) squares += (v[i]! - m) ** 2;
-	return squares;
 }
