@@ -1,5 +1,6 @@
 import { system } from '$lib/domain/actor';
 import type { EventType, Payload } from '$lib/domain/events';
+import type { Tx } from '$lib/server/db/handle';
 import { record } from '$lib/server/log/record';
 import type { TestRegister } from '../../support/register';
 
@@ -7,16 +8,24 @@ const person = (letter: string): `p_${string}` => `p_${letter.repeat(26)}`;
 export const owner = person('a');
 export const developer = person('b');
 
-/** Records one entry as the register itself. */
+/** Records one entry as the register itself, in a running transaction. */
+export const enterIn = <T extends EventType>(
+	{ ctx }: Pick<TestRegister, 'ctx'>,
+	tx: Tx,
+	type: T,
+	subjects: readonly string[],
+	payload: Payload<T>
+): number => record(ctx, tx, system('test'), { rule: 'test' }, { type, subjects, payload }).seq;
+
+/** Records one entry a second later, in a transaction of its own. */
 export const enter = <T extends EventType>(
-	{ ctx, clock }: Pick<TestRegister, 'ctx' | 'clock'>,
+	register: Pick<TestRegister, 'ctx' | 'clock'>,
 	type: T,
 	subjects: readonly string[],
 	payload: Payload<T>
 ): number => {
-	clock.forward(1000);
-	return ctx.write((tx) => record(ctx, tx, system('test'), { rule: 'test' }, { type, subjects, payload }))
-		.seq;
+	register.clock.forward(1000);
+	return register.ctx.write((tx) => enterIn(register, tx, type, subjects, payload));
 };
 
 export const registered = (
@@ -54,14 +63,12 @@ export const history = (register: TestRegister): void => {
 	clock.forward(1000);
 	ctx.write((tx) => {
 		const document = ctx.blobs.put(tx, Buffer.from('{"tiers":[]}'));
-		const policy = { policy: document, release: 'test', document, reasons: [] };
-		record(
-			ctx,
-			tx,
-			system('test'),
-			{ rule: 'test' },
-			{ type: 'policy.proposed', subjects: ['policy'], payload: policy }
-		);
+		enterIn(register, tx, 'policy.proposed', ['policy'], {
+			policy: document,
+			release: 'test',
+			document,
+			reasons: []
+		});
 	});
 	enter(register, 'tier.confirmed', ['M-002'], { model: 'M-002', tier: 2, proposed: 2 });
 	ctx.log.signCheckpoint();
