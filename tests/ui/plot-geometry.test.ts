@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { valueTicks, yearTicks } from '$lib/ui/plots/axis';
 import { crossing } from '$lib/ui/plots/crossing';
 import { datedLines } from '$lib/ui/plots/dated';
-import { bandPath, extent, linePath, spread } from '$lib/ui/plots/paths';
+import { bandPath, downBandPath, downLinePath, extent, linePath, spread } from '$lib/ui/plots/paths';
 
 const quarters = (from: number, count: number): string[] =>
 	Array.from({ length: count }, (_, i) => `${from + Math.floor(i / 4)}-Q${(i % 4) + 1}`);
@@ -42,6 +42,11 @@ describe('paths', () => {
 	it('break at a missing value', () => {
 		expect(linePath([1, 2, null, 4, 5], same, same)).toBe('M0,1L1,2M3,4L4,5');
 		expect(bandPath([1, null], [3, 4], same, same)).toBe('M0,1L0,3Z');
+	});
+
+	it('run down about a vertical', () => {
+		expect(downLinePath([1, null, -2, -1], same, same)).toBe('M1,0ZM-2,2L-1,3');
+		expect(downBandPath([1, 2], same, same)).toBe('M1,0L2,1L0,1L0,0Z');
 	});
 
 	it('know their extent, also of a constant and of nothing', () => {

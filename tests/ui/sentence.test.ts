@@ -54,6 +54,13 @@ describe('long run', () => {
 		);
 	});
 
+	it('speaks of units where a transform left no name for them', () => {
+		const raw: Measure = { name: 'spread', kind: 'units' };
+		expect(longRunSentence(raw, raw, 2)).toBe(
+			'One unit more spread is associated with 2.00 units more spread in the long run.'
+		);
+	});
+
 	it('names the unit of plain quantities and the absence of an effect', () => {
 		const price: Measure = { name: 'house prices', kind: 'units', unit: 'index 2015 = 100' };
 		expect(longRunSentence(price, losses, 0)).toBe(

@@ -91,11 +91,12 @@ function pieceOf({
 }
 
 function shortRunPieces(view: EquationView, decimals: number): Piece[] {
-	const pieces = view.shortRun.map((term, i) =>
+	const counted = { dummy: 0, other: 0 };
+	const pieces = view.shortRun.map((term) =>
 		pieceOf({
 			coefficient: term.coefficient,
 			letter: term.kind === 'dummy' ? 'δ' : 'γ',
-			index: String(i + 1),
+			index: String(++counted[term.kind === 'dummy' ? 'dummy' : 'other']),
 			variable: {
 				difference: term.kind === 'difference',
 				name: term.series,

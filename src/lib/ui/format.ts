@@ -1,4 +1,5 @@
 /** How figures, dates and periods are written: U+2212 as minus, a thin space between thousands, ISO dates, UTC times. */
+import { daysBetween } from '$lib/domain/calendar';
 
 export const MINUS = '\u2212';
 /** Thin space between groups of three digits. */
@@ -87,14 +88,9 @@ export function formatBytes(bytes: number): string {
 	return `${formatNumber(bytes / 1_000_000, { decimals: 1 })}${NO_BREAK}MB`;
 }
 
-/** Whole days from one ISO day to another. */
-export function daysBetween(from: string, to: string): number {
-	return Math.round((Date.parse(formatDate(to)) - Date.parse(formatDate(from))) / 86_400_000);
-}
-
 /** How far a due day lies: `30 days`, `today`, `11 days over`. */
 export function formatDue(today: string, due: string): string {
-	const days = daysBetween(today, due);
+	const days = daysBetween(formatDate(today), formatDate(due));
 	if (days === 0) return 'today';
 	const word = Math.abs(days) === 1 ? 'day' : 'days';
 	return days > 0 ? `${days} ${word}` : `${-days} ${word} over`;

@@ -1,6 +1,13 @@
 /** Sentences computed from estimates: they claim an association, at three significant digits, and judge nothing. */
+import type { Frequency } from '$lib/domain/period';
 import { formatNumber, formatPercent, formatSignificant, NO_BREAK } from './format';
-import { PERIOD_NOUN, type Frequency } from './frequency';
+
+/** The noun for one period of a frequency, and for several. */
+const PERIOD_NOUN: Readonly<Record<Frequency, readonly [one: string, many: string]>> = {
+	annual: ['year', 'years'],
+	quarterly: ['quarter', 'quarters'],
+	monthly: ['month', 'months']
+};
 
 /** How a series is measured where the equation uses it. */
 export interface Measure {
@@ -8,7 +15,7 @@ export interface Measure {
 	readonly name: string;
 	/** `log` of a level, `points` when already in per cent, else `units` of something. */
 	readonly kind: 'log' | 'points' | 'units';
-	/** The unit of a `units` measure: `EUR m`. */
+	/** The unit of a `units` measure: `EUR m`; absent where a transform left none. */
 	readonly unit?: string;
 }
 
@@ -39,7 +46,7 @@ function halfLifeOf(periods: number, many: string): string {
 function stepOf(driver: Measure): string {
 	if (driver.kind === 'log') return `1${NO_BREAK}% more ${driver.name}`;
 	if (driver.kind === 'points') return `One percentage point more ${driver.name}`;
-	return `One unit (${driver.unit ?? 'no unit'}) more ${driver.name}`;
+	return `One unit${driver.unit ? ` (${driver.unit})` : ''} more ${driver.name}`;
 }
 
 /** The change of the dependent series for one step of the driver: `0.500 percentage point`, `0.951 %`. */

@@ -1,5 +1,6 @@
 /** Where the coming twelve months and their due days lie on the year scale. */
-import { countOf, daysBetween } from './format';
+import { daysBetween } from '$lib/domain/calendar';
+import { countOf, formatDate } from './format';
 
 export interface YearMark {
 	readonly date: string;
@@ -40,7 +41,7 @@ export function yearScale(today: string, marks: readonly YearMark[]): YearScaleV
 			i === 0 || index === 0 ? `${name} ${first.year + Math.floor((first.month + i) / 12)}` : name;
 		return { label, dark: i % 2 === 1, left: (i / 12) * 100 };
 	});
-	const late = (mark: YearMark): boolean => mark.overdue ?? daysBetween(today, mark.date) < 0;
+	const late = (mark: YearMark): boolean => mark.overdue ?? daysBetween(today, formatDate(mark.date)) < 0;
 	const overdue = marks.filter(late);
 	const ticks = marks
 		.filter((mark) => !late(mark))

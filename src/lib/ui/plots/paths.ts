@@ -30,6 +30,27 @@ export function bandPath(one: readonly Value[], other: readonly Value[], x: Plac
 	return shape([...one]) ?? '';
 }
 
+/** The same line with time running down: values across, positions downwards. */
+export function downLinePath(values: readonly Value[], x: Place, y: Place): string {
+	const shape = line<Value>()
+		.defined(known)
+		.x((value) => x(value ?? 0))
+		.y((_, i) => y(i))
+		.digits(DIGITS);
+	return shape([...values]) ?? '';
+}
+
+/** The area between a line that runs down and the vertical of zero. */
+export function downBandPath(values: readonly Value[], x: Place, y: Place): string {
+	const shape = area<Value>()
+		.defined(known)
+		.y((_, i) => y(i))
+		.x0(x(0))
+		.x1((value) => x(value ?? 0))
+		.digits(DIGITS);
+	return shape([...values]) ?? '';
+}
+
 /** Least and largest of everything that must be shown. */
 export function extent(...series: readonly (readonly Value[])[]): [number, number] {
 	const values = series.flat().filter(known);
