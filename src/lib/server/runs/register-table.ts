@@ -43,7 +43,6 @@ const latestOf = (row: Schema['run']): LatestRun => {
 /** Every model with the headline of its newest planned run, where the reader sees the model whole. */
 export const registerTable = (ctx: Ctx, actor: Actor, handle: Handle = ctx.read): readonly RegisterLine[] => {
 	const lines = listModels(ctx, actor, handle);
-	// Of two runs that ended in one millisecond the later reference stands.
 	const latest = new Map(handle.all(latestFinished(handle.q, 'planned')).map((row) => [row.model, row]));
 	return lines.map((line): RegisterLine => {
 		const row = line.whole && latest.get(line.ref);

@@ -8,7 +8,7 @@ import type { Ctx } from '../context';
 import type { Handle } from '../db/handle';
 import type { Schema } from '../db/schema';
 import { viewOfRun, type RunView } from './run-view';
-import { countsByPurpose, runByRef, runsPage, type RunFilter } from './runs.queries';
+import { countsByPurpose, finishedRuns, runByRef, runsPage, type RunFilter } from './runs.queries';
 
 export interface RunListing extends Omit<RunFilter, 'models'> {
 	/** Reference of the last run already seen: the page goes on with older ones. */
@@ -94,14 +94,18 @@ export const runCounts = (
 	);
 };
 
-/** The newest finished planned run of a model, else the newest finished one of any purpose. */
+/** The newest finished planned run of a model, of one version or of any; else the newest finished one of any purpose. */
 export const latestRun = (
 	ctx: Ctx,
 	actor: Actor,
 	model: string,
+	version?: string,
 	handle: Handle = ctx.read
 ): RunView | undefined => {
-	const newest = (purpose?: Purpose): RunView | undefined =>
-		listRuns(ctx, actor, { model, state: 'finished', limit: 1, ...(purpose && { purpose }) }, handle).runs[0];
-	return newest('planned') ?? newest();
+	allow(ctx, handle, actor, 'run.read', { model });
+	const finished = handle
+		.all(finishedRuns(handle.q, model))
+		.filter((row) => version === undefined || row.version === version);
+	const row = finished.find(({ purpose }) => purpose === 'planned') ?? finished[0];
+	return row && views(ctx, handle, [row])[0];
 };

@@ -72,22 +72,25 @@ export const countsByPurpose = (q: Q, model: string) =>
 		.where('model', '=', model)
 		.groupBy('purpose');
 
-/** The newest finished run of each model with a purpose. */
+/** The newest finished run of each model with a purpose: the one whose entry came last. */
 export const latestFinished = (q: Q, purpose: 'planned' | 'validation' | 'exploratory') =>
 	q
 		.selectFrom('run')
 		.selectAll()
-		.where('purpose', '=', purpose)
-		.where('state', '=', 'finished')
-		.where((e) =>
-			e(
-				'ended_at',
-				'=',
-				e
-					.selectFrom('run as later')
-					.select((f) => f.fn.max('later.ended_at').as('at'))
-					.whereRef('later.model', '=', 'run.model')
-					.where('later.purpose', '=', purpose)
-					.where('later.state', '=', 'finished')
-			)
+		.where('entry', 'in', (e) =>
+			e
+				.selectFrom('run as finished')
+				.select((f) => f.fn.max('finished.entry').as('entry'))
+				.where('finished.purpose', '=', purpose)
+				.where('finished.state', '=', 'finished')
+				.groupBy('finished.model')
 		);
+
+/** Finished runs of a model, the last to end first. */
+export const finishedRuns = (q: Q, model: string) =>
+	q
+		.selectFrom('run')
+		.selectAll()
+		.where('model', '=', model)
+		.where('state', '=', 'finished')
+		.orderBy('entry', 'desc');
