@@ -4,7 +4,7 @@
  * cancellation between log-gammas.
  */
 
-const LOG_2PI = 1.8378770664093454836;
+const LOG_2PI = 1.8378770664093456;
 
 /** log Gamma(a+1) - [(a+1/2) log a - a + log(2 pi)/2], a > 0. */
 export function stirlingError(a: number): number {

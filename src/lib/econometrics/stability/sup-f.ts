@@ -33,7 +33,8 @@ export interface SupF {
 /**
  * Quandt-Andrews test. Null: no break in the coefficients at an unknown date. F at every date of the trimmed sample
  * from one forward and one backward pass over the rows (Andrews 1993, Econometrica 61, 821-856; Andrews & Ploberger
- * 1994, Econometrica 62, 1383-1414). The distribution assumes stationary regressors. Refuses `empty-trim`.
+ * 1994, Econometrica 62, 1383-1414). The distribution assumes stationary regressors. Refuses `empty-trim` and
+ * `perfect-fit`.
  */
 export function supF(fit: LeastSquares, trim = 0.15): SupF | Refusal {
 	const { nobs: n, k } = fit;
@@ -49,6 +50,11 @@ export function supFBetween(fit: LeastSquares, from: number, to: number, widened
 	if (from > to || from < 1 || to >= n || n <= 2 * k)
 		return refuse('empty-trim', `With ${n} rows and ${k} coefficients no break date is left after trimming.`);
 	const path = statistics(fit, from, to);
+	if (path.some((f) => !Number.isFinite(f)))
+		return refuse(
+			'perfect-fit',
+			'For some break date both parts are fitted exactly; nothing is left to test.'
+		);
 	const largest = Math.max(...path);
 	const lambda = ((n - from) * to) / (from * (n - to));
 	const statistic = (functional: BreakFunctional, stat: number): BreakStatistic =>
