@@ -1,7 +1,7 @@
 import { isRefusal, type Refusal } from '$lib/econometrics/refusal';
-import { levelPath, linePath } from '$lib/domain/policy';
+import { levelPath, linePath, type Policy } from '$lib/domain/policy';
 import type { Reason, RunRequest, Verdict } from '$lib/domain/run';
-import type { Check, Part, ReplicationRow } from '$lib/domain/run-result';
+import type { Check, Estimates, Part, ReplicationRow } from '$lib/domain/run-result';
 import type { Specification } from '$lib/domain/specification';
 import type { Model } from './model';
 import type { ModelSample } from './sample';
@@ -12,6 +12,7 @@ import type { Levels } from './verdict';
 export interface Context {
 	readonly request: RunRequest;
 	readonly spec: Specification;
+	readonly policy: Policy;
 	readonly settings: Settings;
 	readonly levels: Levels;
 	/** Coverage of intervals. */
@@ -20,9 +21,12 @@ export interface Context {
 	readonly sample: ModelSample | Refusal;
 	/** The model, or why there is none. */
 	readonly model: Model | Refusal;
+	readonly estimates: Estimates | null;
 	readonly replication: readonly ReplicationRow[];
 	/** A check that ran before, by id. */
 	readonly done: (id: string) => Check | undefined;
+	/** Keeps a check for those after it. */
+	readonly keep: (check: Check) => void;
 }
 
 /** A check once its data are there. */

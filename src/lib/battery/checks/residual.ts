@@ -1,0 +1,309 @@
+import { archLm } from '$lib/econometrics/diagnostics/arch-lm';
+import { breuschGodfrey } from '$lib/econometrics/diagnostics/breusch-godfrey';
+import { breuschPagan } from '$lib/econometrics/diagnostics/breusch-pagan';
+import { jarqueBera } from '$lib/econometrics/diagnostics/jarque-bera';
+import { ljungBox } from '$lib/econometrics/diagnostics/ljung-box';
+import { reset } from '$lib/econometrics/diagnostics/reset';
+import { whiteSpecial } from '$lib/econometrics/diagnostics/white-special';
+import { isRefusal, type Refusal } from '$lib/econometrics/refusal';
+import { ols, type OlsFit } from '$lib/econometrics/regression/ols';
+import { harveyCollier } from '$lib/econometrics/stability/harvey-collier';
+import { periodsPerYear } from '$lib/domain/period';
+import { linePath } from '$lib/domain/policy';
+import type { Verdict } from '$lib/domain/run';
+import type { Check, Part } from '$lib/domain/run-result';
+import {
+	checkOf,
+	notAssessable,
+	onModel,
+	refusedCheck,
+	refusedPart,
+	tooFew,
+	type Context,
+	type Finding
+} from '../context';
+import { overlapOf } from '../covariance';
+import type { Model } from '../model';
+import { beyondOverlap } from '../overlap';
+import { sources } from '../sources';
+import { badRejection, notBetterThanQuery, notWorseThanQuery, worst } from '../verdict';
+
+/** The regression behind the residuals; given coefficients leave residuals that are projected off the regressors first. */
+const auxiliary = (model: Model): OlsFit | Refusal => model.fit ?? ols(model.residuals, model.design.design);
+
+const projected = (model: Model) => (model.fit ? {} : { residuals: 'projected off the regressors' });
+
+/** Period of the year count, 4 where a year is one period. */
+const yearly = (context: Context): number => {
+	const perYear = periodsPerYear[context.spec.frequency];
+	return perYear === 1 ? 4 : perYear;
+};
+
+/** With autocorrelated residuals the p-values of tests on them are unreliable: at best a query. */
+export const underAutocorrelation = (
+	context: Context,
+	verdict: Verdict
+): { readonly verdict: Verdict; readonly because: readonly string[] } =>
+	context.done('residual.autocorrelation')?.verdict === 'fails'
+		? { verdict: notBetterThanQuery(verdict), because: ['autocorrelated-residuals'] }
+		: { verdict, because: [] };
+
+const levelNames = ['query', 'fails'];
+
+/** Several orders count as one check: the smallest p-value decides. */
+const worseOf = (id: string, parts: readonly Part[], n: number, common: Omit<Finding, 'verdict'>): Check => {
+	const made = parts.filter(({ pValue }) => pValue !== undefined);
+	const refused = parts.find(({ reason }) => reason !== undefined);
+	if (made.length === 0) return notAssessable(id, refused!.reason!, refused!.detail!, { ...common, parts });
+	const decisive = made.reduce((worse, part) => (part.pValue! < worse.pValue! ? part : worse));
+	return checkOf(id, {
+		...common,
+		verdict: worst(made.map(({ verdict }) => verdict!)),
+		statistic: decisive.statistic!,
+		parameters: { ...common.parameters, ...decisive.parameters },
+		pValue: decisive.pValue!,
+		parts,
+		n
+	});
+};
+
+/** Breusch-Godfrey F at order 1 and at a year; the worse counts. */
+export const residualAutocorrelation = onModel(
+	'residual.autocorrelation',
+	sources['residual.autocorrelation']!,
+	(context, model) => {
+		const id = 'residual.autocorrelation';
+		const common = {
+			source: sources[id]!,
+			nullHypothesis: 'no-autocorrelation',
+			lines: ['least', 'first'],
+			levels: levelNames
+		};
+		const overlap = overlapOf(context.spec);
+		if (overlap > 1) return beyondOverlap(id, context, model, overlap, common);
+		const fit = auxiliary(model);
+		if (isRefusal(fit)) return refusedCheck(id, fit, common);
+		const least = context.settings.number(linePath(id, 'least'));
+		const orders = [context.settings.number(linePath(id, 'first')), yearly(context)];
+		const parts = orders.map((order): Part => {
+			const about = `order ${order}`;
+			const test =
+				tooFew(fit.nobs - fit.k - order, least, 'degrees of freedom') ?? breuschGodfrey(fit, order);
+			if (isRefusal(test)) return refusedPart(about, test);
+			return Object.freeze({
+				about,
+				statistic: { name: 'F', value: test.f },
+				parameters: { order, df1: test.df1, df2: test.df2, lm: test.lm, lmP: test.lmP },
+				pValue: test.fP,
+				n: fit.nobs,
+				verdict: badRejection(test.fP, context.levels)
+			});
+		});
+		return worseOf(id, parts, fit.nobs, { ...common, parameters: projected(model) });
+	}
+);
+
+/** Ljung-Box over one to three years: with lagged dependent variables only a guide, so at most a query. */
+export const residualPortmanteau = onModel(
+	'residual.portmanteau',
+	sources['residual.portmanteau']!,
+	(context, model) => {
+		const id = 'residual.portmanteau';
+		const common = {
+			source: sources[id]!,
+			nullHypothesis: 'no-autocorrelation',
+			lines: ['years', 'least'],
+			levels: ['query']
+		};
+		const n = model.residuals.length;
+		const perLag = context.settings.number(linePath(id, 'least'));
+		const lags = context.settings.numbers(linePath(id, 'years')).map((years) => years * yearly(context));
+		const parts = lags.map((lag): Part => {
+			const about = `${lag} lags`;
+			const test = tooFew(n, perLag * lag, 'rows') ?? ljungBox(model.residuals, lag);
+			if (isRefusal(test)) return refusedPart(about, test);
+			return Object.freeze({
+				about,
+				statistic: { name: 'Q', value: test.lb },
+				parameters: { lags: lag, df: test.df },
+				pValue: test.lbP,
+				n,
+				verdict: notWorseThanQuery(badRejection(test.lbP, context.levels))
+			});
+		});
+		const shown = ljungBox(model.residuals, Math.min(Math.max(...lags), Math.floor(n / 2)));
+		const check = worseOf(id, parts, n, common);
+		return isRefusal(shown)
+			? check
+			: Object.freeze({
+					...check,
+					plot: Object.freeze({
+						kind: 'acf' as const,
+						acf: Array.from(shown.acf),
+						bound: 1.959963984540054 / Math.sqrt(n)
+					})
+				});
+	}
+);
+
+/** Departures of the variance cost no more than the standard errors: a query, and none where those are robust. */
+const ofVariance = (context: Context, p: number): { verdict: Verdict; because: readonly string[] } => {
+	const plain = badRejection(p, context.levels);
+	if (plain === 'holds') return { verdict: 'holds', because: [] };
+	return context.spec.standardErrors === 'ols'
+		? { verdict: 'query', because: [] }
+		: { verdict: 'holds', because: ['robust-errors'] };
+};
+
+/** Engle's test of autoregressive conditional variance at two orders. */
+export const residualArch = onModel('residual.arch', sources['residual.arch']!, (context, model) => {
+	const id = 'residual.arch';
+	const common = {
+		source: sources[id]!,
+		nullHypothesis: 'no-arch',
+		lines: ['orders', 'least'],
+		levels: ['query']
+	};
+	const n = model.residuals.length;
+	const few = tooFew(n, context.settings.number(linePath(id, 'least')), 'rows');
+	if (few) return refusedCheck(id, few, common);
+	const parts = context.settings.numbers(linePath(id, 'orders')).map((order): Part => {
+		const test = archLm(model.residuals, order);
+		if (isRefusal(test)) return refusedPart(`order ${order}`, test);
+		return Object.freeze({
+			about: `order ${order}`,
+			statistic: { name: 'LM', value: test.lm },
+			parameters: { order, df: order, f: test.f, fP: test.fP },
+			pValue: test.lmP,
+			n: test.nobs,
+			verdict: ofVariance(context, test.lmP).verdict
+		});
+	});
+	const check = worseOf(id, parts, n, common);
+	const because = check.pValue === undefined ? [] : ofVariance(context, check.pValue).because;
+	return Object.freeze({ ...check, because });
+});
+
+/** Koenker's studentised Breusch-Pagan statistic, White's special form beside it. */
+export const residualHeteroskedasticity = onModel(
+	'residual.heteroskedasticity',
+	sources['residual.heteroskedasticity']!,
+	(context, model) => {
+		const id = 'residual.heteroskedasticity';
+		const common = {
+			source: sources[id]!,
+			nullHypothesis: 'equal-variance',
+			lines: ['least'],
+			levels: ['query']
+		};
+		const fit = auxiliary(model);
+		if (isRefusal(fit)) return refusedCheck(id, fit, common);
+		const few = tooFew(
+			fit.nobs - fit.k,
+			context.settings.number(linePath(id, 'least')),
+			'degrees of freedom'
+		);
+		if (few) return refusedCheck(id, few, common);
+		const test = breuschPagan(fit);
+		if (isRefusal(test)) return refusedCheck(id, test, common);
+		const white = whiteSpecial(fit);
+		const variance = ofVariance(context, test.koenkerP);
+		const unreliable = underAutocorrelation(context, variance.verdict);
+		return checkOf(id, {
+			...common,
+			verdict: unreliable.verdict,
+			because: [...variance.because, ...unreliable.because],
+			statistic: { name: 'LM', value: test.koenker },
+			parameters: { df: test.df, ...projected(model) },
+			pValue: test.koenkerP,
+			n: fit.nobs,
+			...(!isRefusal(white) && {
+				parts: [
+					Object.freeze({
+						about: 'White, special form',
+						statistic: { name: 'LM', value: white.special },
+						parameters: { df: white.df },
+						pValue: white.specialP,
+						n: fit.nobs
+					})
+				]
+			})
+		});
+	}
+);
+
+/** Jarque-Bera: at most a query, and a guide only in small samples. */
+export const residualNormality = onModel(
+	'residual.normality',
+	sources['residual.normality']!,
+	(context, model) => {
+		const id = 'residual.normality';
+		const common = {
+			source: sources[id]!,
+			nullHypothesis: 'normal',
+			lines: ['least', 'guide-below'],
+			levels: ['query']
+		};
+		const n = model.residuals.length;
+		const few = tooFew(n, context.settings.number(linePath(id, 'least')), 'rows');
+		if (few) return refusedCheck(id, few, common);
+		const test = jarqueBera(model.residuals);
+		if (isRefusal(test)) return refusedCheck(id, test, common);
+		const guide = n < context.settings.number(linePath(id, 'guide-below'));
+		return checkOf(id, {
+			...common,
+			verdict: notWorseThanQuery(badRejection(test.p, context.levels)),
+			because: guide ? ['small-sample-guide'] : [],
+			statistic: { name: 'JB', value: test.jb },
+			parameters: { df: 2, skewness: test.skew, kurtosis: test.kurt },
+			pValue: test.p,
+			n
+		});
+	}
+);
+
+/** RESET with powers of the fitted values, Harvey-Collier beside it. */
+export const residualFunctionalForm = onModel(
+	'residual.functional-form',
+	sources['residual.functional-form']!,
+	(context, model) => {
+		const id = 'residual.functional-form';
+		const common = {
+			source: sources[id]!,
+			nullHypothesis: 'linear',
+			lines: ['powers', 'least'],
+			levels: levelNames
+		};
+		if (!model.fit)
+			return notAssessable(id, 'given', 'The coefficients were given; this test needs a fit.', common);
+		const { fit } = model;
+		const powers = context.settings.numbers(linePath(id, 'powers'));
+		const few = tooFew(
+			fit.nobs - fit.k,
+			context.settings.number(linePath(id, 'least')),
+			'degrees of freedom'
+		);
+		if (few) return refusedCheck(id, few, common);
+		const test = reset(fit, powers);
+		if (isRefusal(test)) return refusedCheck(id, test, common);
+		const collier = harveyCollier(fit);
+		return checkOf(id, {
+			...common,
+			...underAutocorrelation(context, badRejection(test.fP, context.levels)),
+			statistic: { name: 'F', value: test.f },
+			parameters: { powers: test.powers, df1: test.df1, df2: test.df2 },
+			pValue: test.fP,
+			n: fit.nobs,
+			...(!isRefusal(collier) && {
+				parts: [
+					Object.freeze({
+						about: 'Harvey-Collier',
+						statistic: { name: 't', value: collier.t },
+						parameters: { df: collier.df },
+						pValue: collier.p
+					})
+				]
+			})
+		});
+	}
+);
