@@ -36,6 +36,16 @@ export const up = async (db: Kysely<unknown>): Promise<void> => {
 		size integer not null check (size = length(bytes)),
 		bytes blob not null
 	) strict`.execute(db);
+	// What each entry changed, row by row: entered by triggers on the projected tables, never by hand.
+	await sql`create table entry_change (
+		entry integer not null,
+		n integer not null check (n >= 1),
+		tbl text not null,
+		row text not null,
+		before text check (json_valid(before)),
+		after text check (json_valid(after)),
+		primary key (entry, n)
+	) strict, without rowid`.execute(db);
 	// The commit gate: a row here breaks a deferred foreign key, so that COMMIT fails until it is deleted.
 	await sql`create table never (seq integer primary key check (0)) strict`.execute(db);
 	await sql`create table current_entry (

@@ -96,13 +96,60 @@ export const projectionGates = (table: string): [string, string][] => [
 	)
 ];
 
+/** The trigger that keeps what a change of a row was; on an update only the columns that differ. */
+const recorder = (
+	table: string,
+	verb: 'insert' | 'update' | 'delete',
+	columns: readonly Column[]
+): [string, string] => {
+	const shown = columns.filter(({ name }) => name !== 'entry').map(({ name }) => name);
+	const key = columns.filter(({ pk }) => pk > 0).sort((a, b) => a.pk - b.pk);
+	const side = verb === 'delete' ? 'old' : 'new';
+	const row = key.map(({ name }) => `${side}."${name}"`).join(` || ' ' || `);
+	const whole = `json_object(${shown.map((name) => `'${name}', ${side}."${name}"`).join(', ')})`;
+	const differing = (of: 'old' | 'new'): string =>
+		`(select json_group_object(name, value) from (${shown
+			.map(
+				(name) =>
+					`select '${name}' as name, ${of}."${name}" as value where old."${name}" is not new."${name}"`
+			)
+			.join(' union all ')}))`;
+	const [before, after] = {
+		insert: ['null', whole],
+		update: [differing('old'), differing('new')],
+		delete: [whole, 'null']
+	}[verb];
+	const entry = '(select seq from current_entry)';
+	return [
+		`${table}_kept_${verb}`,
+		`CREATE TRIGGER ${table}_kept_${verb} after ${verb} on ${table} begin` +
+			` insert into entry_change (entry, n, tbl, row, before, after) select ${entry},` +
+			` (select coalesce(max(n) + 1, 1) from entry_change where entry = ${entry}),` +
+			` '${table}', ${row}, ${before}, ${after}; end`
+	];
+};
+
+interface Column {
+	readonly name: string;
+	readonly pk: number;
+}
+
+const projectionTriggers = (sqlite: Sqlite.Database, table: string): [string, string][] => {
+	const columns = sqlite.pragma(`table_info("${table}")`) as Column[];
+	if (table === 'entry_change') return projectionGates(table);
+	return [
+		...projectionGates(table),
+		...(['insert', 'update', 'delete'] as const).map((verb) => recorder(table, verb, columns))
+	];
+};
+
 const byTable: ReadonlyMap<string, readonly (readonly [string, string])[]> = new Map([
 	['log_head', [...order, ...gate]],
 	...['entry', 'entry_subject', 'node', 'checkpoint', 'blob'].map(
 		(table) => [table, immutable(table)] as const
-	),
-	...projectedTables.map((table) => [table, projectionGates(table)] as const)
+	)
 ]);
+const isProjected: ReadonlySet<string> = new Set(projectedTables);
 
 /** The triggers a database must have, by name, with their text as `sqlite_schema` keeps it. */
 export const expectedTriggers = (sqlite: Sqlite.Database): Map<string, string> => {
@@ -110,7 +157,11 @@ export const expectedTriggers = (sqlite: Sqlite.Database): Map<string, string> =
 		.prepare<[], string>(`select name from sqlite_schema where type = 'table'`)
 		.pluck()
 		.all();
-	return new Map(tables.flatMap((table) => byTable.get(table) ?? []));
+	return new Map(
+		tables.flatMap((table) =>
+			isProjected.has(table) ? projectionTriggers(sqlite, table) : (byTable.get(table) ?? [])
+		)
+	);
 };
 
 /** The triggers a database has, by name. */

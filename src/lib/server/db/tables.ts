@@ -37,7 +37,9 @@ export const projectedTables = [
 	'vintage_column',
 	'series',
 	// runs
-	'run'
+	'run',
+	// log: last, so that a difference is named in the table where it lies
+	'entry_change'
 ] as const;
 
 export const outsideTables = [
