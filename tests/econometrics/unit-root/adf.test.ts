@@ -3,6 +3,7 @@ import { ols } from '$lib/econometrics/regression/ols';
 import { designOf } from '$lib/econometrics/series/design';
 import { adf } from '$lib/econometrics/unit-root/adf';
 import { adfAuto, defaultMaxLag } from '$lib/econometrics/unit-root/adf-auto';
+import { kpss } from '$lib/econometrics/unit-root/kpss';
 import { mackinnonCritical, mackinnonP } from '$lib/econometrics/unit-root/mackinnon';
 import { made, noise, randomWalk, reasonOf } from '../simulated';
 
@@ -36,6 +37,39 @@ describe('Dickey-Fuller test', () => {
 			);
 			expect(other.stat).toBeCloseTo(plain.stat, 9);
 		}
+	});
+
+	it('holds at the ends of the range of units, and refuses beyond', () => {
+		const v = randomWalk(7, 90);
+		const plain = made(adf(v, { det: 'ct', lags: 1 }));
+		for (const scale of [1e-149, 1e148]) {
+			const far = v.map((x) => scale * x);
+			expect(made(adf(far, { det: 'ct', lags: 1 })).stat).toBeCloseTo(plain.stat, 9);
+			expect(made(kpss(far, { det: 'c', lag: 'long' })).stat).toBeCloseTo(
+				made(kpss(v, { det: 'c', lag: 'long' })).stat,
+				10
+			);
+			const search = made(adfAuto(far, { det: 'c', rule: 'AIC', maxLag: 5 })).search;
+			const here = made(adfAuto(v, { det: 'c', rule: 'AIC', maxLag: 5 })).search;
+			expect(search.selected).toBe(here.selected);
+			expect(search.criteria![2]! - here.criteria![2]!).toBeCloseTo(2 * 84 * Math.log(scale), 6);
+		}
+		expect(
+			reasonOf(
+				adf(
+					v.map((x) => 1e160 * x),
+					{ det: 'c', lags: 0 }
+				)
+			)
+		).toBe('domain');
+		expect(
+			reasonOf(
+				adf(
+					v.map((x) => 1e-160 * x),
+					{ det: 'c', lags: 0 }
+				)
+			)
+		).toBe('domain');
 	});
 
 	it('chooses the lag that separate regressions on the common sample choose', () => {

@@ -1,8 +1,9 @@
 import { isRefusal, refuse, type Refusal } from '../refusal';
-import { adf, refuseSeries, type Adf } from './adf';
+import { adf, type Adf } from './adf';
 import { adfRegression } from './adf-regression';
 import type { Deterministic } from './mackinnon';
 import { leadingRss, sequentialFit } from './sequential-fit';
+import { refuseSeries, toUnitSize } from './usable-series';
 
 export type LagRule = 'AIC' | 'BIC' | 'tsig';
 
@@ -53,7 +54,8 @@ export function searchLags(v: Float64Array, { det, rule, maxLag }: SearchOptions
 	if (maxLag >= v.length - 1) return refuse('lag', `${maxLag} lags of ${v.length} observations`);
 	const refusal = refuseSeries(v);
 	if (refusal) return refusal;
-	const regression = adfRegression(v, det, maxLag, maxLag);
+	const { values, logScale } = toUnitSize(v);
+	const regression = adfRegression(values, det, maxLag, maxLag);
 	const columns = [...regression.deterministic, regression.level, ...regression.lags];
 	const fit = sequentialFit(
 		regression.y,
@@ -67,7 +69,9 @@ export function searchLags(v: Float64Array, { det, rule, maxLag }: SearchOptions
 		const selected = lastSignificantLag(rss, (p) => fit.coordinates[base + p - 1]!, fit.nobs, base);
 		return Object.freeze({ rule, maxLag, selected, criteria: null });
 	}
-	const criteria = rss.map((value, p) => criterion(rule, value, fit.nobs, base + p));
+	const criteria = rss.map((value, p) =>
+		criterion(rule, Math.log(value / fit.nobs) + 2 * logScale, fit.nobs, base + p)
+	);
 	return Object.freeze({
 		rule,
 		maxLag,
@@ -76,8 +80,8 @@ export function searchLags(v: Float64Array, { det, rule, maxLag }: SearchOptions
 	});
 }
 
-function criterion(rule: 'AIC' | 'BIC', rss: number, n: number, k: number): number {
-	const minusTwoLogLik = n * (Math.log(2 * Math.PI) + Math.log(rss / n) + 1);
+function criterion(rule: 'AIC' | 'BIC', logVariance: number, n: number, k: number): number {
+	const minusTwoLogLik = n * (Math.log(2 * Math.PI) + logVariance + 1);
 	return minusTwoLogLik + k * (rule === 'AIC' ? 2 : Math.log(n));
 }
 

@@ -2,6 +2,7 @@ import { isRefusal, refuse, type Refusal } from '../refusal';
 import { adfRegression } from './adf-regression';
 import { mackinnonCritical, mackinnonP, type CriticalValues, type Deterministic } from './mackinnon';
 import { sequentialFit, type SequentialFit } from './sequential-fit';
+import { refuseSeries, toUnitSize } from './usable-series';
 
 /** Augmented Dickey-Fuller test of one series. */
 export interface Adf {
@@ -63,7 +64,7 @@ export function adf(
 export function dickeyFuller(v: Float64Array, det: Deterministic, lags: number): DickeyFuller | Refusal {
 	const refusal = refuseSeries(v) ?? refuseLags(v, lags);
 	if (refusal) return refusal;
-	const regression = adfRegression(v, det, lags, lags);
+	const regression = adfRegression(toUnitSize(v).values, det, lags, lags);
 	const columns = [...regression.lags, ...regression.deterministic, regression.level];
 	const fit = sequentialFit(
 		regression.y,
@@ -80,21 +81,6 @@ export function dickeyFuller(v: Float64Array, det: Deterministic, lags: number):
 		se: fit.last.se,
 		fit
 	});
-}
-
-/** Refuses a series with a value that is not finite, or that does not vary. */
-export function refuseSeries(v: Float64Array): Refusal | null {
-	let low = Infinity;
-	let high = -Infinity;
-	for (let i = 0; i < v.length; i++) {
-		if (!Number.isFinite(v[i]!)) return refuse('non-finite', `observation ${i + 1} is not a finite number`);
-		low = Math.min(low, v[i]!);
-		high = Math.max(high, v[i]!);
-	}
-	if (v.length < 3) return refuse('too-short', `${v.length} observations; at least 3 are needed`);
-	if (high - low <= 1e-12 * Math.max(1, Math.abs(low), Math.abs(high)))
-		return refuse('constant', 'the series does not vary');
-	return null;
 }
 
 function refuseLags(v: Float64Array, lags: number): Refusal | null {

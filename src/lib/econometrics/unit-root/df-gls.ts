@@ -2,8 +2,9 @@ import { isRefusal, type Refusal } from '../refusal';
 import { leastSquares } from '../regression/least-squares';
 import { constant, trend } from '../series/deterministic';
 import { designOf, type Regressor } from '../series/design';
-import { dickeyFuller, refuseSeries } from './adf';
+import { dickeyFuller } from './adf';
 import { mackinnonP, type CriticalValues } from './mackinnon';
+import { refuseSeries } from './usable-series';
 
 /** Dickey-Fuller test after local-to-unity detrending. */
 export interface DfGls {

@@ -1,7 +1,7 @@
 import { refuse, type Refusal } from '../refusal';
-import { refuseSeries } from './adf';
 import { detrend } from './detrend';
 import { hobijnLag, longLag, longRunVariance, shortLag } from './long-run-variance';
+import { refuseSeries, toUnitSize } from './usable-series';
 
 export type KpssLag = number | 'short' | 'long' | 'hobijn';
 
@@ -41,7 +41,7 @@ export function kpss(
 	const refusal = refuseSeries(v);
 	if (refusal) return refusal;
 	const nobs = v.length;
-	const e = detrend(v, det);
+	const e = detrend(toUnitSize(v).values, det);
 	const chosen = chooseLag(e, lag);
 	if (!Number.isInteger(chosen) || chosen < 0 || chosen >= nobs)
 		return refuse('lag', `truncation lag ${chosen} of ${nobs} observations`);

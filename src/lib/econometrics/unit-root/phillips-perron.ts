@@ -2,9 +2,9 @@ import { isRefusal, refuse, type Refusal } from '../refusal';
 import { leastSquares } from '../regression/least-squares';
 import { constant, trend } from '../series/deterministic';
 import { designOf, type Regressor } from '../series/design';
-import { refuseSeries } from './adf';
 import { longRunVariance } from './long-run-variance';
 import { mackinnonCritical, mackinnonP, type CriticalValues } from './mackinnon';
+import { refuseSeries } from './usable-series';
 
 /** Phillips-Perron test of one series. */
 export interface PhillipsPerron {
