@@ -62,10 +62,16 @@ describe('labels', () => {
 	});
 
 	it('of dates outside the periods are left out, neighbours take turns', () => {
-		const marks = ['2006-Q1', '1999-Q1', '2005-Q1'].map((period) => ({ period, label: 'x' }));
-		expect(datedLines(quarters(2005, 8), marks).map(({ index, row }) => [index, row])).toEqual([
-			[0, 0],
-			[4, 1]
+		const marks = ['2006-Q2', '1999-Q1', '2005-Q1', '2005-Q2', '2006-Q1'].map((period) => ({
+			period,
+			label: 'x'
+		}));
+		const placed = datedLines(quarters(2005, 8), marks);
+		expect(placed.map(({ index, turned, row }) => [index, turned, row])).toEqual([
+			[0, false, 0],
+			[1, false, 1],
+			[4, true, 1],
+			[5, true, 0]
 		]);
 	});
 });

@@ -9,15 +9,23 @@ export interface DatedMark {
 export interface DatedLine {
 	readonly mark: DatedMark;
 	readonly index: number;
-	/** Row of its label, so that neighbours do not cover each other. */
+	/** In the right half a label stands left of its line. */
+	readonly turned: boolean;
+	/** Row of its label from the top. */
 	readonly row: number;
 }
 
-/** Marks that fall within the periods, in order of time; three rows of labels in turn. */
+const ROWS = 3;
+
+/**
+ * Marks that fall within the periods, in order of time. Lines begin at their label; labels that run towards other
+ * lines stand above the beginning of those, so that no line passes through a label.
+ */
 export function datedLines(periods: readonly string[], marks: readonly DatedMark[]): readonly DatedLine[] {
-	return marks
+	const lines = marks
 		.map((mark) => ({ mark, index: periods.indexOf(mark.period) }))
 		.filter(({ index }) => index >= 0)
-		.sort((a, b) => a.index - b.index)
-		.map((line, i) => ({ ...line, row: i % 3 }));
+		.map((line) => ({ ...line, turned: line.index > (periods.length - 1) / 2 }))
+		.sort((a, b) => a.index - b.index);
+	return lines.map((line, i) => ({ ...line, row: (line.turned ? lines.length - 1 - i : i) % ROWS }));
 }
