@@ -3,9 +3,12 @@ import { bootstrapEcm } from '$lib/econometrics/cointegration/bootstrap-ecm';
 import { bootstrapEngleGranger, sieveOrder } from '$lib/econometrics/cointegration/bootstrap-engle-granger';
 import { boundsOfF, boundsTest, readFBounds } from '$lib/econometrics/cointegration/bounds';
 import { ecmT, ecmTCritical, readTBounds, tBounds } from '$lib/econometrics/cointegration/ecm-t';
+import { dynamicOls } from '$lib/econometrics/cointegration/dynamic-ols';
 import { engleGranger } from '$lib/econometrics/cointegration/engle-granger';
+import { engleGrangerPath } from '$lib/econometrics/cointegration/engle-granger-path';
 import { quantile } from '$lib/econometrics/cointegration/quantile';
 import { residualStationarity } from '$lib/econometrics/cointegration/residual-stationarity';
+import { shin } from '$lib/econometrics/cointegration/shin';
 import { oneStep } from '$lib/econometrics/error-correction/one-step';
 import { leastSquares } from '$lib/econometrics/regression/least-squares';
 import { designOf } from '$lib/econometrics/series/design';
@@ -53,6 +56,54 @@ describe('Engle-Granger test', () => {
 		}
 		expect(rejections).toBeGreaterThan(8);
 		expect(rejections).toBeLessThan(36);
+	});
+});
+
+describe('Engle-Granger path', () => {
+	it('ends at the test of the whole sample and uses the value of each own length', () => {
+		const path = engleGrangerPath(model, 1, 40);
+		const whole = made(engleGranger(model, 1));
+		expect(path.length).toBe(61);
+		expect(path.at(-1)).toEqual({ end: 100, stat: whole.stat, critical: whole.critical!['5%'] });
+		expect(path[0]!.critical).toBe(mackinnonCritical('c', 3, 39)!['5%']);
+	});
+
+	it('leaves a dummy out until it is switched on', () => {
+		const pulse = { name: 'p', kind: 'pulse', column: new Float64Array(100).fill(1, 80, 81) } as const;
+		expect(engleGrangerPath({ ...model, dummies: [pulse] }, 1, 40).length).toBe(61);
+	});
+});
+
+describe('tests with cointegration as the null', () => {
+	it('finds the long run through leads and lags, with errors', () => {
+		const relation = made(dynamicOls(model, { leads: 2, lag: 4 }));
+		const [, a, b] = relation.coefficients;
+		expect(Math.abs(a!.coef - 0.8)).toBeLessThan(3 * a!.se);
+		expect(Math.abs(b!.coef + 0.3)).toBeLessThan(3 * b!.se);
+		expect(relation.fit.nobs).toBe(100 - 1 - 4);
+	});
+
+	it("Shin's test keeps a relation and rejects its absence", () => {
+		const options = { leads: 1, lag: 4 };
+		const [a, b] = model.drivers;
+		const errors = noise(12, 100);
+		const y = errors.map((e, i) => 1 + 0.8 * a!.column[i]! - 0.3 * b!.column[i]! + e);
+		const kept = made(shin({ ...model, y }, options));
+		expect(kept.stat).toBeLessThan(kept.critical!['5%']);
+		const walks = { ...model, y: randomWalk(321, 100) };
+		const rejected = made(shin(walks, options));
+		expect(rejected.stat).toBeGreaterThan(rejected.critical!['5%']);
+	});
+
+	it('has no table with a step or six drivers, and refuses windows that do not fit', () => {
+		const six = {
+			...model,
+			drivers: [1, 2, 3, 4, 5, 6].map((i) => ({ name: `x${i}`, column: randomWalk(i, 100) }))
+		};
+		expect(made(shin(six, { leads: 1, lag: 4 })).critical).toBeNull();
+		expect(reasonOf(shin(model, { leads: 1, lag: 200 }))).toBe('lag');
+		expect(reasonOf(shin(model, { leads: -1, lag: 4 }))).toBe('lag');
+		expect(reasonOf(shin(model, { leads: 50, lag: 4 }))).toBe('too-short');
 	});
 });
 
