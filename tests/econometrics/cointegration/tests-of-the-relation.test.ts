@@ -83,16 +83,21 @@ describe('tests with cointegration as the null', () => {
 		expect(relation.fit.nobs).toBe(100 - 1 - 4);
 	});
 
-	it("Shin's test keeps a relation and rejects its absence", () => {
-		const options = { leads: 1, lag: 4 };
-		const [a, b] = model.drivers;
-		const errors = noise(12, 100);
-		const y = errors.map((e, i) => 1 + 0.8 * a!.column[i]! - 0.3 * b!.column[i]! + e);
-		const kept = made(shin({ ...model, y }, options));
-		expect(kept.stat).toBeLessThan(kept.critical!['5%']);
-		const walks = { ...model, y: randomWalk(321, 100) };
-		const rejected = made(shin(walks, options));
-		expect(rejected.stat).toBeGreaterThan(rejected.critical!['5%']);
+	it("Shin's test rejects a relation about as rarely as it should, and its absence mostly", () => {
+		const rejections = (seed: number, errors: (seed: number) => Float64Array) => {
+			let count = 0;
+			for (let i = 0; i < 200; i++) {
+				const x = randomWalk(seed + 2 * i, 120);
+				const y = errors(seed + 2 * i + 1).map((e, t) => 1 + 0.8 * x[t]! + e);
+				const test = made(shin({ y, det: 'c', drivers: [{ name: 'x', column: x }] }, { leads: 1, lag: 4 }));
+				if (test.stat > test.critical!['5%']) count++;
+			}
+			return count;
+		};
+		const kept = rejections(30_000, (seed) => noise(seed, 120));
+		expect(kept).toBeGreaterThan(2);
+		expect(kept).toBeLessThan(22);
+		expect(rejections(40_000, (seed) => randomWalk(seed, 120))).toBeGreaterThan(120);
 	});
 
 	it('has no table with a step or six drivers, and refuses windows that do not fit', () => {
