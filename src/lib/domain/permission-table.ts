@@ -54,7 +54,7 @@ const table = {
 	'policy.read': { who: ['person'], scope: 'read' },
 	'log.read': { who: overseers, scope: 'read', reads: true, known: true },
 	'entry.read': whole,
-	'people.read': { who: ['admin', ...overseers] },
+	'people.read': { who: ['admin', ...overseers], reads: true, known: true },
 	'account.read': { who: ['self'], recovery: true },
 
 	// The register

@@ -87,14 +87,11 @@ describe('1: form of the answer', () => {
 		});
 	});
 	test('a signature that does not encode back to itself', async () => {
-		const text = changed(
-			await fresh({ signature: (good) => good.subarray(0, 67) }),
-			({ response }) => {
-				const last = response['signature']!.at(-1)!;
-				const next = String.fromCharCode(last.charCodeAt(0) + 1);
-				response['signature'] = response['signature']!.slice(0, -1) + next;
-			}
-		);
+		const text = changed(await fresh({ signature: (good) => good.subarray(0, 67) }), ({ response }) => {
+			const last = response['signature']!.at(-1)!;
+			const next = String.fromCharCode(last.charCodeAt(0) + 1);
+			response['signature'] = response['signature']!.slice(0, -1) + next;
+		});
 		expect(await answerTo(text)).toMatchObject({ reason: 'request' });
 	});
 	test('the two ids differ', async () => {

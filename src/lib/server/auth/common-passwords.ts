@@ -58,29 +58,23 @@ const wordAt = (text: string, plain: string, at: number): number => {
 	return 0;
 };
 
-/** A text is some period repeated when it equals its own beginning over and over. */
-const period = (text: string): number => {
-	for (let length = 1; length <= text.length / 2; length++)
-		if ([...text].every((c, i) => c === text[i % length])) return length;
-	return text.length;
-};
-
 /**
- * Pieces a guesser would put together: common words, keyboard runs, years, repeated characters; what fits none costs a
- * piece a character.
+ * Different pieces a guesser would put together: common words, keyboard runs, years, repeated characters; what fits
+ * none is a piece a character, and a piece that comes again costs nothing.
  */
 const pieces = (text: string): number => {
 	const plain = asLetters(text);
-	let count = 0;
-	for (let at = 0; at < text.length; count++) {
+	const found = new Set<string>();
+	for (let at = 0; at < text.length;) {
 		const run = runAt(text, at);
 		const year = years.test(text.slice(at)) ? 4 : 0;
-		at += Math.max(1, wordAt(text, plain, at), year, run >= 3 ? run : 0);
+		const length = Math.max(1, wordAt(text, plain, at), year, run >= 3 ? run : 0);
+		found.add(plain.slice(at, (at += length)));
 	}
-	return count;
+	return found.size;
 };
 
-/** Four or more independent pieces are taken; a sentence of four words has them. */
+/** Four or more different pieces are taken; a sentence of four words has them. */
 const leastPieces = 4;
 
 /**
@@ -89,5 +83,5 @@ const leastPieces = 4;
  */
 export const isCommon = (password: string): boolean => {
 	const text = password.replace(/[\s\-_.,;:#*/\\]+/g, '');
-	return new Set(text).size < 5 || pieces(text.slice(0, period(text))) < leastPieces;
+	return new Set(text).size < 5 || pieces(text) < leastPieces;
 };
