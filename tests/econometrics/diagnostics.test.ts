@@ -3,9 +3,11 @@ import { archLm } from '$lib/econometrics/diagnostics/arch-lm';
 import { breuschGodfrey } from '$lib/econometrics/diagnostics/breusch-godfrey';
 import { breuschPagan } from '$lib/econometrics/diagnostics/breusch-pagan';
 import { collinearity } from '$lib/econometrics/diagnostics/collinearity';
+import { influence } from '$lib/econometrics/diagnostics/influence';
 import { jarqueBera } from '$lib/econometrics/diagnostics/jarque-bera';
 import { ljungBox } from '$lib/econometrics/diagnostics/ljung-box';
 import { reset } from '$lib/econometrics/diagnostics/reset';
+import { white } from '$lib/econometrics/diagnostics/white';
 import { whiteSpecial } from '$lib/econometrics/diagnostics/white-special';
 import { leastSquares } from '$lib/econometrics/regression/least-squares';
 import { ols, type OlsFit } from '$lib/econometrics/regression/ols';
@@ -172,4 +174,62 @@ it('no statistic depends on the unit of y', () => {
 		[must(reset(fit)).f, must(reset(other)).f]
 	] as const;
 	for (const [a, b] of pairs) expect(apart(a, b)).toBeLessThan(1e-9);
+});
+
+describe('influence', () => {
+	it('of a row is what a fit without it shows', () => {
+		const rows = must(influence(fit));
+		const t = 17;
+		const keep = (v: Float64Array): Float64Array => v.filter((_, i) => i !== t);
+		const without = must(
+			ols(keep(sample.y), { names: sample.design.names, columns: sample.design.columns.map(keep) })
+		);
+		const row = rows[t]!;
+		const unscaled = fit.se.map((se) => se / fit.sigma);
+		row.dfbetas!.forEach((value, j) => {
+			const change = (fit.coef[j]! - without.coef[j]!) / (without.sigma * unscaled[j]!);
+			expect(Math.abs(value - change)).toBeLessThan(1e-10);
+		});
+		const predicted = sample.design.columns.reduce(
+			(sum, column, j) => sum + column[t]! * without.coef[j]!,
+			0
+		);
+		expect(row.dffits).toBeCloseTo((fit.fitted[t]! - predicted) / (without.sigma * Math.sqrt(row.hat)), 9);
+	});
+
+	it('flags an outlier far from the rest, and shows a row that is fitted exactly as such', () => {
+		const x = sample.design.columns[1]!.slice();
+		x[40] = 60;
+		const columns = sample.design.columns.map((column, j) => (j === 1 ? x : column));
+		const odd = { y: sample.y.map((v, i) => (i === 40 ? v + 30 : v)), design: { ...sample.design, columns } };
+		expect(must(influence(fitOf(odd)))[40]!.flags).toEqual(['hat', 'dffits', 'dfbetas', 'cooks']);
+		const pulsed = withColumn(
+			sample,
+			'D',
+			Float64Array.from({ length: 50 }, (_, i) => (i === 9 ? 1 : 0))
+		);
+		const row = must(influence(fitOf(pulsed)))[9]!;
+		expect(row).toMatchObject({ row: 10, rstudent: null, cooks: null, dfbetas: null, flags: ['hat'] });
+	});
+
+	it('is refused when leaving out a row leaves nothing', () => {
+		expect(influence(fitOf(drawSample(2, 5, 4)))).toMatchObject({ refused: 'too-short' });
+	});
+});
+
+describe('White', () => {
+	it('counts levels, squares and cross-products', () => {
+		expect(must(white(fit)).df).toBe(3 + 3 + 3);
+	});
+
+	it('is refused with a dummy, with too many terms, and with a constant alone', () => {
+		const dummy = withColumn(
+			sample,
+			'D',
+			Float64Array.from({ length: 50 }, (_, i) => (i > 20 ? 1 : 0))
+		);
+		expect(white(fitOf(dummy))).toMatchObject({ refused: 'rank' });
+		expect(white(fitOf(drawSample(2, 20, 6)))).toMatchObject({ refused: 'too-short' });
+		expect(white(must(ols(sample.y, designOf([constant(50)]))))).toMatchObject({ refused: 'constant' });
+	});
 });

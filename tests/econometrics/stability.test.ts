@@ -10,6 +10,7 @@ import { cusum, cusumP, CUSUM_BOUNDARY } from '$lib/econometrics/stability/cusum
 import { cusumOfSquares } from '$lib/econometrics/stability/cusum-of-squares';
 import { hansenP } from '$lib/econometrics/stability/hansen-p';
 import { harveyCollier } from '$lib/econometrics/stability/harvey-collier';
+import { nyblomHansen } from '$lib/econometrics/stability/nyblom-hansen';
 import { kolmogorovP, olsCusum } from '$lib/econometrics/stability/ols-cusum';
 import { recursiveResiduals } from '$lib/econometrics/stability/recursive-residuals';
 import { scoreSupF } from '$lib/econometrics/stability/score-sup-f';
@@ -243,5 +244,35 @@ describe('breaks', () => {
 		for (let t = 0; t < b; t++) sum += fit.resid[t]!;
 		const expected = (40 * sum ** 2) / (fit.rss / 40) / (b * (40 - b));
 		expect(apart(found.path[b - found.from]!, expected)).toBeLessThan(1e-12);
+	});
+});
+
+describe('Nyblom-Hansen', () => {
+	const sample = drawSample(31, 90, 3);
+
+	it('sees a coefficient that wanders, and names it', () => {
+		const next = mulberry32(9);
+		let slope = 0;
+		const wandering = sample.y.map(
+			(y, t) => y + (slope += 0.4 * drawNormal(next)) * sample.design.columns[2]![t]!
+		);
+		const found = must(nyblomHansen(fitOf({ y: wandering, design: sample.design })));
+		expect(found.jointCoefficients.stat).toBeGreaterThan(found.jointCoefficients.critical![3]!);
+		expect(found.individual.map((part) => part.name)).toEqual(['const', 'x1', 'x2', 'variance']);
+		expect(found.individual[2]!.pBetween).toEqual([0, 0.01]);
+		const quiet = must(nyblomHansen(fitOf(sample)));
+		expect(quiet.jointWithVariance.pBetween).toEqual([0.1, 1]);
+		expect(quiet.jointWithVariance.df).toBe(4);
+	});
+
+	it('has no table beyond 20 parameters', () => {
+		const wide = must(nyblomHansen(fitOf(drawSample(32, 120, 20))));
+		expect(wide.jointCoefficients.critical).toHaveLength(4);
+		expect(wide.jointWithVariance).toMatchObject({
+			df: 21,
+			critical: null,
+			pBetween: null,
+			pApproximate: null
+		});
 	});
 });

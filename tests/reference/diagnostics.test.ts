@@ -3,10 +3,13 @@ import { archLm } from '$lib/econometrics/diagnostics/arch-lm';
 import { breuschGodfrey } from '$lib/econometrics/diagnostics/breusch-godfrey';
 import { breuschPagan } from '$lib/econometrics/diagnostics/breusch-pagan';
 import { collinearity } from '$lib/econometrics/diagnostics/collinearity';
+import { influence } from '$lib/econometrics/diagnostics/influence';
 import { jarqueBera } from '$lib/econometrics/diagnostics/jarque-bera';
 import { ljungBox } from '$lib/econometrics/diagnostics/ljung-box';
 import { reset } from '$lib/econometrics/diagnostics/reset';
+import { white } from '$lib/econometrics/diagnostics/white';
 import { whiteSpecial } from '$lib/econometrics/diagnostics/white-special';
+import { isRefusal } from '$lib/econometrics/refusal';
 import type { OlsFit } from '$lib/econometrics/regression/ols';
 import { equationOf } from './equations';
 import { checksOf, compare, listOf, must, type Check } from './reference';
@@ -54,6 +57,19 @@ function collinearityValues(fit: OlsFit): Values {
 	return { vif, condition_number_scaled: v.conditionNumber };
 }
 
+/** Where there are too many terms, or collinear ones, the reference has none either. */
+function whiteValues(fit: OlsFit): Values {
+	const v = white(fit);
+	if (isRefusal(v)) return { full: null, note: 'skipped: too many or collinear auxiliary regressors' };
+	return { full: v.full, full_p: v.p, full_df: v.df };
+}
+
+function influenceValues(fit: OlsFit): Values {
+	const rows = must(influence(fit));
+	const keys = ['hat', 'rstandard', 'rstudent', 'cooks', 'dffits', 'dfbetas'] as const;
+	return Object.fromEntries(keys.map((key) => [key, rows.map((row) => row[key])]));
+}
+
 /** How each method is computed, and how many checks and numbers of it must have been compared. */
 const methods: readonly (readonly [string, (fit: OlsFit, check: Check) => Values, number, number])[] = [
 	['breusch_godfrey', breuschGodfreyValues, 35, 210],
@@ -63,6 +79,8 @@ const methods: readonly (readonly [string, (fit: OlsFit, check: Check) => Values
 	['white_special', whiteSpecialValues, 12, 36],
 	['jarque_bera', jarqueBeraValues, 12, 48],
 	['reset', resetValues, 24, 96],
+	['white', whiteValues, 12, 34],
+	['influence', influenceValues, 12, 25033],
 	['vif', collinearityValues, 12, 101]
 ];
 

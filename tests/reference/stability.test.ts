@@ -4,6 +4,7 @@ import { chow, predictiveChow } from '$lib/econometrics/stability/chow';
 import { cusum } from '$lib/econometrics/stability/cusum';
 import { cusumOfSquares } from '$lib/econometrics/stability/cusum-of-squares';
 import { harveyCollier } from '$lib/econometrics/stability/harvey-collier';
+import { nyblomHansen } from '$lib/econometrics/stability/nyblom-hansen';
 import { olsCusum } from '$lib/econometrics/stability/ols-cusum';
 import { recursiveResiduals } from '$lib/econometrics/stability/recursive-residuals';
 import { supF, supFBetween, type SupF } from '$lib/econometrics/stability/sup-f';
@@ -61,6 +62,17 @@ const breakValues = (fit: OlsFit, v: SupF): Values => ({
 	expF_p: v.exp.p
 });
 
+function nyblomHansenValues(fit: OlsFit): Values {
+	const v = must(nyblomHansen(fit));
+	return {
+		joint_with_variance: v.jointWithVariance.stat,
+		df_with_variance: v.jointWithVariance.df,
+		joint_coef_only: v.jointCoefficients.stat,
+		df_coef: v.jointCoefficients.df,
+		individual: Object.fromEntries(v.individual.map(({ name, stat }) => [name, stat]))
+	};
+}
+
 /** Of a mean alone: the same statistics over a sample trimmed at both ends by the same number of rows. */
 function meanBreakValues(fit: OlsFit, { params }: Check): Values {
 	const from = Math.floor((params.trim as number) * fit.nobs);
@@ -94,6 +106,7 @@ const methods: readonly Method[] = [
 	{ method: 'chow', valuesOf: chowValues, counts: [12, 60] },
 	{ method: 'chow_predictive', valuesOf: predictiveChowValues, counts: [12, 72] },
 	{ method: 'quandt_andrews', valuesOf: (fit) => breakValues(fit, must(supF(fit))), counts: [19, 190] },
+	{ method: 'nyblom_hansen', valuesOf: nyblomHansenValues, counts: [12, 161] },
 	{ method: 'mean_break', valuesOf: meanBreakValues, counts: [2, 18], except: ['rss', 'bic', 'breaks'] }
 ];
 

@@ -1,6 +1,7 @@
 import { isRefusal, refuse, type Refusal } from '../refusal';
 import type { LeastSquares } from '../regression/least-squares';
 import { recursiveResiduals } from './recursive-residuals';
+import { tabulatedLevel, type TabulatedLevel } from './tabulated-level';
 
 /** Two-sided levels; the published columns are one-sided. */
 export const CUSUMSQ_LEVELS = Object.freeze([0.2, 0.1, 0.05, 0.02, 0.01] as const);
@@ -12,7 +13,8 @@ const SURFACE = [
 	[-0.5816458, -0.7351697, -0.8858694, -1.0847745, -1.2365861]
 ] as const;
 
-export interface CusumOfSquares {
+/** No exact p-value is published; the level is read off the five critical values. */
+export interface CusumOfSquares extends TabulatedLevel {
 	/** Largest distance of the path from its mean value line. */
 	readonly maxDeviation: number;
 	/** Where the largest distance lies: `above` the line (variance fell) or `below` (variance rose). */
@@ -20,10 +22,6 @@ export interface CusumOfSquares {
 	readonly m: number;
 	/** Half-width of the band at the five levels of `CUSUMSQ_LEVELS`, in their order. */
 	readonly critical: readonly number[];
-	/** The two neighbouring levels: the p-value lies between them (0 and 1 at the ends). No exact one is published. */
-	readonly pBetween: readonly [low: number, high: number];
-	/** Interpolated in the logarithm of the level, for display; null outside the table. */
-	readonly pApproximate: number | null;
 	/** Share of the sum of squares reached, j = 1..N; without a change it follows j/N. */
 	readonly path: Float64Array;
 	/** Row (1-based) of the regression that belongs to j = 1. */
@@ -55,23 +53,8 @@ export function cusumOfSquares(fit: LeastSquares): CusumOfSquares | Refusal {
 		side: farthest >= 0 ? 'above' : 'below',
 		m,
 		critical: Object.freeze(critical),
-		...levels(maxDeviation, critical),
+		...tabulatedLevel(maxDeviation, critical, CUSUMSQ_LEVELS),
 		path,
 		first
 	});
-}
-
-function levels(
-	stat: number,
-	critical: readonly number[]
-): Pick<CusumOfSquares, 'pBetween' | 'pApproximate'> {
-	const exceeded = critical.filter((value) => stat >= value).length;
-	const high = exceeded === 0 ? 1 : CUSUMSQ_LEVELS[exceeded - 1]!;
-	const low = CUSUMSQ_LEVELS[exceeded] ?? 0;
-	if (exceeded === 0 || exceeded === critical.length) return { pBetween: [low, high], pApproximate: null };
-	const share = (stat - critical[exceeded - 1]!) / (critical[exceeded]! - critical[exceeded - 1]!);
-	return {
-		pBetween: [low, high],
-		pApproximate: Math.exp((1 - share) * Math.log(high) + share * Math.log(low))
-	};
 }
