@@ -24,30 +24,33 @@ export const valueDigest = (value: unknown): string => digestOf(Buffer.from(cano
 /** Digest of a request: equal requests are the same run, made again. */
 export const requestDigest = (request: RunRequest): string => valueDigest(request);
 
-/** Sentences and the coordinates of plots are rendered from the rest. */
-const evidenceOf = (check: Check): unknown => {
-	const { detail: _detail, plot: _plot, source: _source, ...evidence } = check;
-	return {
-		...evidence,
-		...(check.parts && { parts: check.parts.map(({ detail: _words, ...part }) => part) })
-	};
-};
+/** A copy without some of its members. */
+const without = (value: object, names: readonly string[]): Record<string, unknown> =>
+	Object.fromEntries(Object.entries(value).filter(([name]) => !names.includes(name)));
+
+/** Sentences, sources and the coordinates of plots are rendered from the rest or stand in the program. */
+const evidenceOf = (check: Check): unknown => ({
+	...without(check, ['detail', 'plot', 'source']),
+	...(check.parts && { parts: check.parts.map((part) => without(part, ['detail'])) })
+});
+
+/** A refusal counts by its reason. */
+const reasonOnly = <T extends { readonly refused?: { readonly reason: string } }>(value: T): unknown => ({
+	...without(value, ['refused']),
+	...(value.refused && { refused: value.refused.reason })
+});
 
 /**
  * SHA-256 of the numbers, verdicts, parameters and reasons of a result and of its request, canonical, at ten significant
- * digits.
+ * digits. The specification counts by its digest in the request.
  */
-export const resultDigest = (result: Omit<RunResult, 'digest'>): string => {
-	const { checks, specification: _specification, refused, ...rest } = result;
-	return valueDigest(
-		rounded({
-			...rest,
-			...(refused && { refused: refused.reason }),
-			companions: result.companions.map(({ refused: why, ...companion }) => ({
-				...companion,
-				...(why && { refused: why.reason })
-			})),
-			checks: checks.map(evidenceOf)
-		})
+export const resultDigest = (result: Omit<RunResult, 'digest'>): string =>
+	valueDigest(
+		rounded(
+			reasonOnly({
+				...(without(result, ['specification']) as { refused?: { reason: string } }),
+				companions: result.companions.map(reasonOnly),
+				checks: result.checks.map(evidenceOf)
+			})
+		)
 	);
-};

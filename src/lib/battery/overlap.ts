@@ -47,6 +47,7 @@ export const beyondOverlap = (
 		statistic: parts[at]!.statistic!,
 		parameters: { span, lag: lags[at]! },
 		pValue: p,
+		rejected: p < context.levels.query,
 		parts,
 		n
 	});

@@ -26,6 +26,8 @@ export const notWorseThanQuery = (verdict: Verdict): Verdict => (verdict === 'fa
 export interface Judged {
 	readonly verdict: Verdict;
 	readonly because: readonly string[];
+	/** The null was rejected at the level, before other rules. */
+	readonly rejected: boolean;
 }
 
 /** Where a rejection is bad: fails below one level, query below the other. */
@@ -61,12 +63,15 @@ const shownBy = (
 export const goodRejection = (test: GoodTest, level: number): Judged | undefined => {
 	const read = shownBy(test, level);
 	if (!read) return undefined;
-	if (test.refuted) return { verdict: 'fails', because: [...read.because, 'does-not-correct'] };
+	const rejected = read.shown;
+	if (test.refuted) return { verdict: 'fails', because: [...read.because, 'does-not-correct'], rejected };
 	if (test.opposed)
-		return read.shown
-			? { verdict: 'query', because: [...read.because, 'opposite-null-rejected'] }
-			: { verdict: 'fails', because: [...read.because, 'opposite-null-rejected'] };
-	return { verdict: read.shown ? 'holds' : 'query', because: read.because };
+		return {
+			verdict: rejected ? 'query' : 'fails',
+			because: [...read.because, 'opposite-null-rejected'],
+			rejected
+		};
+	return { verdict: rejected ? 'holds' : 'query', because: read.because, rejected };
 };
 
 /** The tabulated critical value of a level; undefined where the table lacks the level. */

@@ -167,6 +167,8 @@ export interface Check {
 	readonly reason?: Reason;
 	/** The sentence of a refusal, or the condition a verdict carries. */
 	readonly detail?: string;
+	/** Whether the null was rejected at the policy's level, before other rules. */
+	readonly rejected?: boolean;
 	/** Codes of the rules that changed the plain reading: `critical-and-p-differ`, `autocorrelated-residuals`, … */
 	readonly because?: readonly string[];
 	readonly statistic?: Statistic;

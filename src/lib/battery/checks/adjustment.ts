@@ -123,6 +123,7 @@ export const adjustmentHalfLife = onModel(
 			statistic: { name: 'half-life', value: found.periods },
 			parameters: {
 				quarters,
+				coverage: context.interval,
 				...(interval && { low: interval.low }),
 				...(interval && (interval.high === null ? { openEnd: true } : { high: interval.high }))
 			},

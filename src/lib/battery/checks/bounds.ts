@@ -100,6 +100,7 @@ export const cointegrationBounds = onModel(id, sources[id]!, (context, model) =>
 	return checkOf(id, {
 		...common,
 		parts,
+		rejected: parts.every(({ verdict }) => verdict === 'holds'),
 		verdict: refuted ? 'fails' : parts.every(({ verdict }) => verdict === 'holds') ? 'holds' : 'query',
 		because: refuted ? ['does-not-correct'] : inconclusive ? ['between-bounds'] : []
 	});

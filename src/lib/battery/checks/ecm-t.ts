@@ -120,7 +120,7 @@ const judged = (context: Context, fit: ErrorCorrectionFit, stat: number, evidenc
 	const inconclusive = judgement.verdict === 'query' && between ? ['between-bounds'] : [];
 	return checkOf(id, {
 		...common,
-		verdict: judgement.verdict,
+		...judgement,
 		because: [...judgement.because, ...inconclusive]
 	});
 };

@@ -110,7 +110,7 @@ const judged = (context: Context, test: EngleGranger, drawn: Bootstraps | Refusa
 		levels: ['shown']
 	};
 	return judgement
-		? checkOf(id, { ...common, verdict: judgement.verdict, because: judgement.because })
+		? checkOf(id, { ...common, ...judgement })
 		: notAssessable(id, 'table', 'No critical value exists for this relation.', common);
 };
 

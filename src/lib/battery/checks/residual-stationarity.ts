@@ -70,7 +70,7 @@ const judged = (
 	);
 	const common = { ...rest, ...evidence(test) };
 	return judgement
-		? checkOf(id, { ...common, verdict: judgement.verdict, because: judgement.because })
+		? checkOf(id, { ...common, ...judgement })
 		: notAssessable(
 				id,
 				'table',

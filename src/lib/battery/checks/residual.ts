@@ -51,7 +51,13 @@ export const underAutocorrelation = (
 const levelNames = ['query', 'fails'];
 
 /** Several orders count as one check: the smallest p-value decides. */
-const worseOf = (id: string, parts: readonly Part[], n: number, common: Omit<Finding, 'verdict'>): Check => {
+const worseOf = (
+	id: string,
+	parts: readonly Part[],
+	n: number,
+	query: number,
+	common: Omit<Finding, 'verdict'>
+): Check => {
 	const made = parts.filter(({ pValue }) => pValue !== undefined);
 	const refused = parts.find(({ reason }) => reason !== undefined);
 	if (made.length === 0) return notAssessable(id, refused!.reason!, refused!.detail!, { ...common, parts });
@@ -62,6 +68,7 @@ const worseOf = (id: string, parts: readonly Part[], n: number, common: Omit<Fin
 		statistic: decisive.statistic!,
 		parameters: { ...common.parameters, ...decisive.parameters },
 		pValue: decisive.pValue!,
+		rejected: decisive.pValue! < query,
 		parts,
 		n
 	});
@@ -99,7 +106,7 @@ export const residualAutocorrelation = onModel(
 				verdict: badRejection(test.fP, context.levels)
 			});
 		});
-		return worseOf(id, parts, fit.nobs, { ...common, parameters: projected(model) });
+		return worseOf(id, parts, fit.nobs, context.levels.query, { ...common, parameters: projected(model) });
 	}
 );
 
@@ -132,7 +139,7 @@ export const residualPortmanteau = onModel(
 			});
 		});
 		const shown = ljungBox(model.residuals, Math.min(Math.max(...lags), Math.floor(n / 2)));
-		const check = worseOf(id, parts, n, common);
+		const check = worseOf(id, parts, n, context.levels.query, common);
 		return isRefusal(shown)
 			? check
 			: Object.freeze({
@@ -179,7 +186,7 @@ export const residualArch = onModel('residual.arch', sources['residual.arch']!, 
 			verdict: ofVariance(context, test.lmP).verdict
 		});
 	});
-	const check = worseOf(id, parts, n, common);
+	const check = worseOf(id, parts, n, context.levels.query, common);
 	const because = check.pValue === undefined ? [] : ofVariance(context, check.pValue).because;
 	return Object.freeze({ ...check, because });
 });
@@ -216,6 +223,7 @@ export const residualHeteroskedasticity = onModel(
 			statistic: { name: 'LM', value: test.koenker },
 			parameters: { df: test.df, ...projected(model) },
 			pValue: test.koenkerP,
+			rejected: test.koenkerP < context.levels.query,
 			n: fit.nobs,
 			...(!isRefusal(white) && {
 				parts: [
@@ -257,6 +265,7 @@ export const residualNormality = onModel(
 			statistic: { name: 'JB', value: test.jb },
 			parameters: { df: 2, skewness: test.skew, kurtosis: test.kurt },
 			pValue: test.p,
+			rejected: test.p < context.levels.query,
 			n
 		});
 	}
@@ -293,6 +302,7 @@ export const residualFunctionalForm = onModel(
 			statistic: { name: 'F', value: test.f },
 			parameters: { powers: test.powers, df1: test.df1, df2: test.df2 },
 			pValue: test.fP,
+			rejected: test.fP < context.levels.query,
 			n: fit.nobs,
 			...(!isRefusal(collier) && {
 				parts: [

@@ -47,6 +47,7 @@ export const stabilityCusum = onModel('stability.cusum', sources['stability.cusu
 		statistic: { name: 'S', value: test.stat },
 		parameters: { recursiveResiduals: test.path.length, crossesAt5: test.crosses5 },
 		pValue: test.p,
+		rejected: test.p < context.levels.query,
 		criticalValues: (['10%', '5%', '1%'] as const).map((level) => ({ level, value: CUSUM_BOUNDARY[level] })),
 		n: model.fit.nobs,
 		plot: Object.freeze({
@@ -101,6 +102,7 @@ export const stabilityCusumsq = onModel(
 			statistic: { name: 'deviation', value: test.maxDeviation },
 			parameters: { side: test.side, recursiveResiduals: n },
 			pText: bracketText(test.pBetween),
+			rejected: plain !== 'holds',
 			criticalValues: CUSUMSQ_LEVELS.map((level, i) => ({
 				level: `${Math.round(100 * level)}%`,
 				value: test.critical[i]!
@@ -166,6 +168,7 @@ const ofSupF = (context: Context, model: Model, fit: OlsFit, test: SupF): Check 
 			...(test.beyondTable && { beyondTable: true })
 		},
 		pValue: test.sup.pGuarded,
+		rejected: test.sup.pGuarded < context.levels.query,
 		criticalValues: [{ level: `${Number((100 * context.levels.query).toPrecision(6))}%`, value: critical }],
 		n: fit.nobs,
 		plot: Object.freeze({
