@@ -17,6 +17,8 @@ export default defineConfig(
 	{
 		languageOptions: { globals: { ...globals.browser, ...globals.node } },
 		rules: {
+			// There is no base path, and addresses arrive as props.
+			'svelte/no-navigation-without-resolve': 'off',
 			// TypeScript resolves names itself.
 			'no-undef': 'off',
 			// Typed arrays are indexed in inner loops where bounds are proved by the loop itself.

@@ -56,7 +56,8 @@ const ensureCompiler = () => {
 	const missing = ['python3', 'make', 'g++'].filter(
 		(tool) => spawnSync(tool, ['--version'], { stdio: 'ignore' }).status !== 0
 	);
-	if (missing.length > 0) installDebian(missing, `The SQLite driver is compiled here and needs ${missing.join(', ')}.`);
+	if (missing.length > 0)
+		installDebian(missing, `The SQLite driver is compiled here and needs ${missing.join(', ')}.`);
 };
 
 const ensurePackages = () => {
@@ -67,14 +68,18 @@ const ensurePackages = () => {
 	say('Installing packages (a few minutes the first time: the SQLite driver is compiled).');
 	// Node's own headers, where this installation has them: without them the driver's build would download some.
 	const prefix = resolve(dirname(process.execPath), '..');
-	const headers = existsSync(join(prefix, 'include/node/node_version.h')) ? { npm_config_nodedir: prefix } : {};
+	const headers = existsSync(join(prefix, 'include/node/node_version.h'))
+		? { npm_config_nodedir: prefix }
+		: {};
 	run('npm', ['ci', '--no-audit', '--no-fund'], { ...process.env, ...headers });
 	writeFileSync(stamp, wanted);
 };
 
 const ensureBuild = () => {
 	const sources = ['src', 'static', 'migrations', 'policies', 'package-lock.json', 'package.json'];
-	const settings = readdirSync(root).filter((name) => /^(svelte|vite|tailwind|tsconfig).*\.(js|ts|json)$/.test(name));
+	const settings = readdirSync(root).filter((name) =>
+		/^(svelte|vite|tailwind|tsconfig).*\.(js|ts|json)$/.test(name)
+	);
 	const wanted = digest([...sources, ...settings.sort()]);
 	const stamp = join(root, 'build', '.keelbook-built');
 	if (isCurrent(stamp, wanted)) return;

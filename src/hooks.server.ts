@@ -1,6 +1,6 @@
 import { randomBytes } from 'node:crypto';
 import { redirect, type Handle, type HandleServerError, type ServerInit } from '@sveltejs/kit';
-import { identify } from '$lib/server/auth/identify';
+import { identify } from '$lib/server/people/identify';
 import { register, start } from '$lib/server/boot';
 import { guard } from '$lib/server/http/guard';
 import { dress } from '$lib/server/http/headers';

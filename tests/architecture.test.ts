@@ -17,7 +17,8 @@ const roomOf = (file: string): string => {
 	return third!.replace(/\.ts$/, '');
 };
 
-const importPattern = /(?:import|export)\s+(type\s+)?(?:[^'";]*?\sfrom\s+)?['"]([^'"]+)['"]|import\(\s*['"]([^'"]+)['"]\s*\)/g;
+const importPattern =
+	/(?:import|export)\s+(type\s+)?(?:[^'";]*?\sfrom\s+)?['"]([^'"]+)['"]|import\(\s*['"]([^'"]+)['"]\s*\)/g;
 
 interface Import {
 	readonly from: string;
@@ -119,7 +120,14 @@ describe('architecture', () => {
 			dependencies: Record<string, string>;
 		};
 		const css = readFileSync(join(src, 'app.css'), 'utf8');
-		const used = new Set(all.map(({ what }) => what.split('/').slice(0, what.startsWith('@') ? 2 : 1).join('/')));
+		const used = new Set(
+			all.map(({ what }) =>
+				what
+					.split('/')
+					.slice(0, what.startsWith('@') ? 2 : 1)
+					.join('/')
+			)
+		);
 		expect(
 			Object.keys(manifest.dependencies).filter((name) => !used.has(name) && !css.includes(name))
 		).toEqual([]);

@@ -6,7 +6,12 @@ const debian = '/usr/bin/chromium';
 /** Debian's Chromium, else the one inside an npm package. */
 export const launch = async (): Promise<Browser> => {
 	// Root needs the flag; nothing else is loosened.
-	const args = ['--no-sandbox', '--disable-background-networking', '--disable-component-update', '--no-first-run'];
+	const args = [
+		'--no-sandbox',
+		'--disable-background-networking',
+		'--disable-component-update',
+		'--no-first-run'
+	];
 	if (existsSync(debian)) return chromium.launch({ executablePath: debian, args });
 	process.env['AWS_EXECUTION_ENV'] ??= 'AWS_Lambda_nodejs20.x';
 	const { default: packaged } = await import('@sparticuz/chromium');

@@ -43,7 +43,9 @@ export const startServer = async ({ demo = false }: { demo?: boolean } = {}): Pr
 	const port = await freePort();
 	const origin = `http://localhost:${port}`;
 	const data = demo ? join(folder, 'data/demo') : join(folder, 'register');
-	const env = Object.fromEntries(Object.entries(process.env).filter(([name]) => !/^(KEELBOOK_|VITEST)/.test(name)));
+	const env = Object.fromEntries(
+		Object.entries(process.env).filter(([name]) => !/^(KEELBOOK_|VITEST)/.test(name))
+	);
 	const child = fork(resolve(root, 'tests/support/start-with-clock.js'), [], {
 		cwd: folder,
 		silent: true,

@@ -6,3 +6,5 @@ process.on('message', (/** @type {{ at: string }} */ { at }) => {
 	process.send?.({ moved: at });
 });
 await import('../../scripts/start.js');
+
+export {};

@@ -1,12 +1,16 @@
 import { existsSync, mkdirSync, renameSync, rmSync, statSync } from 'node:fs';
 import { join } from 'node:path';
+import { engineVersion } from '$lib/battery/engine';
 import { system } from '$lib/domain/actor';
 import { version } from '../../../package.json';
 import { clock, type Clock } from './clock';
 import { readConfig, type Config } from './config';
 import type { Ctx } from './context';
+import type { Handle } from './db/handle';
 import { takeLease } from './db/lease';
+import { programOf } from './db/program';
 import { seedDemo } from './demo/seed';
+import { stageOf } from './demo/stage';
 import { openLog } from './log/open';
 import { record } from './log/record';
 import { people } from './people/directory';
@@ -50,20 +54,21 @@ export const openRegister = async (config: Config, now: Clock): Promise<Opened> 
 			now
 		});
 		const pool = createPool();
+		const known = { config, now, blobs: opened.blobs, policies: releasedPolicies() };
 		const ctx: Ctx = Object.freeze({
-			config,
-			now,
+			...known,
 			read: opened.read,
 			write: opened.write,
 			log: opened.log,
 			projectors,
-			facts: { model: modelFacts, parties: partiesOf },
-			blobs: opened.blobs,
+			facts: Object.freeze({
+				model: (handle: Handle, ref: string) => modelFacts(known, handle, ref),
+				parties: partiesOf
+			}),
 			people: people(opened.read),
-			policies: releasedPolicies(),
 			pool
 		});
-		if (opened.fresh) ctx.write((tx) => adoptReleased(ctx, tx, 'start'));
+		if (opened.fresh) ctx.write((tx) => adoptReleased(ctx, tx));
 		return {
 			ctx,
 			fresh: opened.fresh,
@@ -90,7 +95,12 @@ const enterStart = (ctx: Ctx): void => {
 			{
 				type: 'app.started',
 				subjects: ['register'],
-				payload: { version, node: process.version, platform: `${process.platform}-${process.arch}` }
+				payload: {
+					version,
+					engine: engineVersion,
+					node: process.version,
+					...programOf(ctx.read)
+				}
 			}
 		)
 	);
@@ -99,14 +109,20 @@ const enterStart = (ctx: Ctx): void => {
 /** Makes the demo bank beside its place and moves it there whole: a start that is interrupted leaves no half of it. */
 const makeDemo = async (config: Config, now: Clock): Promise<void> => {
 	if (existsSync(join(config.data, 'keelbook.db'))) return;
-	const partial: Config = { ...config, data: `${config.data}.partial`, logKeyFile: `${config.logKeyFile}.partial` };
-	for (const path of [partial.data, partial.logKeyFile, config.data]) rmSync(path, { recursive: true, force: true });
-	let staged: Date | undefined;
-	const opened = await seedDemo(
-		(demoClock) => openRegister(partial, demoClock),
-		{ today: now(), set: (at) => (staged = at), now: () => staged ?? now() }
-	);
-	await opened.close();
+	const partial: Config = {
+		...config,
+		data: `${config.data}.partial`,
+		logKeyFile: `${config.logKeyFile}.partial`
+	};
+	for (const path of [partial.data, partial.logKeyFile, config.data])
+		rmSync(path, { recursive: true, force: true });
+	const stage = stageOf(now());
+	const opened = await openRegister(partial, stage.now);
+	try {
+		await seedDemo(opened.ctx, stage);
+	} finally {
+		await opened.close();
+	}
 	renameSync(partial.logKeyFile, config.logKeyFile);
 	renameSync(partial.data, config.data);
 };
@@ -127,7 +143,9 @@ export const start = async (): Promise<void> => {
 	const opened = await openRegister(config, now);
 	current = opened;
 	if (opened.fresh && !config.demo) {
-		process.stdout.write('The register is empty. Two administrators enrol with these links, each once, within 24 hours:\n');
+		process.stdout.write(
+			'The register is empty. Two administrators enrol with these links, each once, within 24 hours:\n'
+		);
 		for (const { url } of firstLinks(opened.ctx)) process.stdout.write(`  ${url}\n`);
 	}
 	enterStart(opened.ctx);

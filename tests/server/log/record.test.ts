@@ -3,7 +3,7 @@ import { record } from '$lib/server/log/record';
 import { expect, test } from 'vitest';
 import { testRegister } from '../../support/register';
 
-const started = { version: '0.1.0', node: 'v20', platform: 'linux-x64' };
+const started = { version: '0.1.0', engine: '1.0.0', node: 'v20', sqlite: '3.53.2', schema: 6 };
 
 test('an entry is appended, counted per subject and signed', async () => {
 	const { ctx, clock, close, opened } = await testRegister();

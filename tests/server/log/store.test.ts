@@ -24,7 +24,7 @@ afterEach(close);
 
 const rows = (table: 'model' | 'entry' | 'node'): number =>
 	register.ctx.read.all(register.ctx.read.q.selectFrom(table).selectAll()).length;
-const started = { version: '0', node: 'v20', platform: 'test' };
+const started = { version: '0', engine: '1', node: 'v20', sqlite: '3', schema: 6 };
 
 describe('a transaction', () => {
 	test('that throws leaves nothing, and the next one goes on from the same place', () => {

@@ -15,6 +15,13 @@ export const logEvents = {
 	}),
 	/** Which program serves the register from here on. */
 	'app.started': event(1, {
-		1: z.strictObject({ version: z.string(), node: z.string(), platform: z.string() })
+		1: z.strictObject({
+			version: z.string(),
+			engine: z.string(),
+			node: z.string(),
+			sqlite: z.string(),
+			/** Number of migrations that made the tables. */
+			schema: z.int().min(0)
+		})
 	})
 } as const;

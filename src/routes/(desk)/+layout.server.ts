@@ -1,0 +1,24 @@
+import { roleWords } from '$lib/domain/roles';
+import { serve } from '$lib/server/http/serve';
+import { logHead } from '$lib/server/log/head';
+import { reviewsDue } from '$lib/server/register/reviews';
+import type { LayoutServerLoad } from './$types';
+
+/** What every signed-in page carries: who reads, the coming dates, the folio. */
+export const load: LayoutServerLoad = (event) =>
+	serve(event, (ctx, actor) => {
+		const { size, at } = logHead(ctx.read);
+		const name = ctx.people.names([actor.person]).get(actor.person) ?? actor.person;
+		return {
+			who: { label: `${name} · ${roleWords(actor.roles)}`, href: '/account' },
+			today: ctx.now().toISOString().slice(0, 10),
+			marks: reviewsDue(ctx, actor).map(({ model, name: of, due }) => ({
+				date: due.date,
+				label: `review of ${model} ${of}`,
+				href: `/models/${model}`,
+				overdue: due.overdue
+			})),
+			folio: size - 1,
+			at
+		};
+	});
