@@ -4,9 +4,12 @@ import { sumOfOwnLags } from '$lib/econometrics/error-correction/lag-coefficient
 import { halfLife } from '$lib/econometrics/error-correction/half-life';
 import { longRun } from '$lib/econometrics/error-correction/long-run';
 import { cumulativeMultipliers } from '$lib/econometrics/error-correction/multipliers';
+import { centred, mean, sumOfSquares } from '$lib/econometrics/linalg/vectors';
 import { oneStep } from '$lib/econometrics/error-correction/one-step';
+import { projection } from '$lib/econometrics/error-correction/projection';
 import { termName, type Coefficients } from '$lib/econometrics/error-correction/terms';
 import { twoStep } from '$lib/econometrics/error-correction/two-step';
+import { difference } from '$lib/econometrics/series/lags';
 import { neweyWest } from '$lib/econometrics/regression/newey-west';
 import type { OlsFit } from '$lib/econometrics/regression/ols';
 import { equationFrom, sampleFrom, shapeOf } from './cases-as-equations';
@@ -81,11 +84,40 @@ function multiplierValues(of: Case, check: Check): Record<string, unknown> {
 	return Object.fromEntries(drivers.map((series) => [series, cumulativeMultipliers(adl, series, 20)]));
 }
 
+/** Drivers go on at their mean change; the adverse path falls two standard deviations of a change below over a year. */
+function projectionValues(of: Case, check: Check): Record<string, unknown> {
+	const horizon = check.params.H as number;
+	const { coefficients, equation } = oneStepOf(of, check);
+	const sample = sampleFrom(of);
+	const paths = (adverse: boolean) =>
+		new Map(
+			equation.longRun.drivers.map((name) => {
+				const x = sample.series.get(name)!;
+				const change = difference(x);
+				const drift = mean(change);
+				const spread = Math.sqrt(sumOfSquares(centred(change)) / (change.length - 1));
+				const at = (h: number) =>
+					x[of.T - 1]! + h * drift - (adverse ? (2 * spread * Math.min(h, 4)) / 4 : 0);
+				return [name, Float64Array.from({ length: horizon }, (_, i) => at(i + 1))] as const;
+			})
+		);
+	const path = (drivers: ReadonlyMap<string, Float64Array>) =>
+		must(projection(coefficients, equation, sample, { horizon, drivers, dummies: new Map() }));
+	const [base, adverse] = [paths(false), paths(true)];
+	return {
+		x_base: Object.fromEntries(base),
+		x_adverse: Object.fromEntries(adverse),
+		y_base: path(base),
+		y_adverse: path(adverse)
+	};
+}
+
 const methods: Readonly<Record<string, (of: Case, check: Check) => Record<string, unknown>>> = {
 	ecm_one_step: oneStepValues,
 	ecm_two_step: twoStepValues,
 	adl_levels: levelsValues,
-	cumulative_multipliers: multiplierValues
+	cumulative_multipliers: multiplierValues,
+	projection: projectionValues
 };
 
 describe.each(Object.entries(methods))('%s equals the reference', (method, compute) => {

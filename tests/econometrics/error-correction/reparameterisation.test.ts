@@ -1,7 +1,8 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { toErrorCorrection, toLevels } from '$lib/econometrics/error-correction/adl';
-import { driverLags, ownLags, withLevels } from '$lib/econometrics/error-correction/lag-coefficients';
+import { driverLags, ownLags } from '$lib/econometrics/error-correction/lag-coefficients';
+import { withLevels } from '$lib/econometrics/error-correction/with-levels';
 import { longRun } from '$lib/econometrics/error-correction/long-run';
 import { oneStep } from '$lib/econometrics/error-correction/one-step';
 import { twoStep } from '$lib/econometrics/error-correction/two-step';

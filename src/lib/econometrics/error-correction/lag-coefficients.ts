@@ -1,4 +1,4 @@
-import { indexOf, valueOf, type Coefficients, type Term } from './terms';
+import { valueOf, type Coefficients, type Term } from './terms';
 
 /** Readings of the coefficients of an equation by lag. */
 
@@ -32,32 +32,4 @@ export function driverLags(adl: Coefficients, series: string): Float64Array {
 		term.kind === 'driver-level' && term.series === series && term.lag === lag;
 	const last = largestLagOf(adl.terms, (term) => term.kind === 'driver-level' && term.series === series);
 	return Float64Array.from({ length: last + 1 }, (_, l) => valueOf(adl, of(l)));
-}
-
-/**
- * The error-correction form with free levels of an equation around a gap: y(t-1) takes the coefficient on the
- * gap, each driver of the relation minus that times its slope. The covariance is left out, for the relation's own
- * is not in it.
- */
-export function withLevels(
-	gapForm: Coefficients,
-	relation: { readonly slopes: readonly { readonly series: string; readonly value: number }[] }
-): Coefficients {
-	const at = indexOf(gapForm, (term) => term.kind === 'gap');
-	const weight = gapForm.values[at]!;
-	const rest = gapForm.terms.flatMap((term, i) => (i === at ? [] : [{ term, value: gapForm.values[i]! }]));
-	const levels: { term: Term; value: number }[] = [
-		{ term: { kind: 'own-level', lag: 1 }, value: weight },
-		...relation.slopes.map(({ series, value }) => ({
-			term: { kind: 'driver-level', series, lag: 1 } as const,
-			value: -weight * value
-		}))
-	];
-	const all = [...levels, ...rest];
-	return Object.freeze({
-		terms: Object.freeze(all.map((part) => part.term)),
-		values: Float64Array.from(all, (part) => part.value),
-		covariance: null,
-		df: gapForm.df
-	});
 }
