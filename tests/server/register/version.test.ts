@@ -84,7 +84,7 @@ describe('signs come first', () => {
 		const head = bank.person('G. Ostrom', 'head');
 		const validator = bank.person('I. Marrow', 'validator');
 		declare();
-		const theirs = { model, side: 'validator', drivers: [{ ...unemploymentUp, low: 0.3 }] } as const;
+		const theirs = { model, side: 'validator' as const, drivers: [{ ...unemploymentUp, low: 0.3 }] };
 		expect(() => declareSigns(bank.ctx, validator, theirs)).toThrow(Refused);
 		assignValidator(bank.ctx, head, { model, person: validator.person as PersonId });
 		expect(() => declareSigns(bank.ctx, owner, theirs)).toThrow(Refused);

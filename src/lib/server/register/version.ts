@@ -12,7 +12,7 @@ import type { Specification } from '$lib/domain/specification';
 import { record } from '$lib/server/log/record';
 import { allow } from '$lib/server/people/allow';
 import type { Ctx } from '../context';
-import type { Handle } from '../db/handle';
+import type { Handle, Tx } from '../db/handle';
 import { versionByRef, versionsOf } from './register.queries';
 import { requireSigns } from './signs';
 
@@ -73,35 +73,56 @@ const requireClaimsAfterSigns = (handle: Handle, model: string, { specification 
 	requireSigns(handle, model, specification, 'version.draft');
 };
 
+type Drafting = z.output<typeof drafting>;
+
+const enterDraft = (
+	ctx: Ctx,
+	tx: Tx,
+	actor: Actor,
+	{ model, reason, predecessor }: Drafting,
+	written: Written
+): string => {
+	const grant = allow(ctx, tx, actor, 'version.draft', { model });
+	requireClaimsAfterSigns(tx, model, written);
+	const before = tx.all(versionsOf(tx.q, model));
+	if (before.length > 0 && reason === undefined)
+		throw new Invalid([{ pointer: '/reason', message: 'Say why the model gets another version.' }]);
+	if (predecessor !== undefined && !before.some(({ ref }) => ref === predecessor))
+		throw new Invalid([{ pointer: '/predecessor', message: `${model} has no version ${predecessor}.` }]);
+	const parentRef = predecessor ?? before.filter(({ state }) => state !== 'withdrawn').at(-1)?.ref;
+	const version = part(model, before.length + 1);
+	record(ctx, tx, actor, grant, {
+		type: 'version.drafted',
+		subjects: [model, version],
+		payload: {
+			version,
+			model,
+			...written,
+			reason: reason ?? 'First version.',
+			...(parentRef !== undefined && { predecessor: parentRef })
+		}
+	});
+	return version;
+};
+
 /**
  * Drafts the next version of a model.
  * @returns its reference, `M-014/3`
  * @throws Invalid with pointers into the specification; Refused `signs-first` when it claims coefficients too early
  */
 export const draftVersion = (ctx: Ctx, actor: Actor, input: z.input<typeof drafting>): string => {
-	const { model, reason, predecessor, specification: typed } = taken(drafting, input);
-	const written = writtenOf(typed);
+	const asked = taken(drafting, input);
+	const written = writtenOf(asked.specification);
+	return ctx.write((tx) => enterDraft(ctx, tx, actor, asked, written));
+};
+
+/** Drafts and submits a specification in one step: either both are entered or neither. @returns its reference */
+export const submitSpecification = (ctx: Ctx, actor: Actor, input: z.input<typeof drafting>): string => {
+	const asked = taken(drafting, input);
+	const written = writtenOf(asked.specification);
 	return ctx.write((tx) => {
-		const grant = allow(ctx, tx, actor, 'version.draft', { model });
-		requireClaimsAfterSigns(tx, model, written);
-		const before = tx.all(versionsOf(tx.q, model));
-		if (before.length > 0 && reason === undefined)
-			throw new Invalid([{ pointer: '/reason', message: 'Say why the model gets another version.' }]);
-		if (predecessor !== undefined && !before.some(({ ref }) => ref === predecessor))
-			throw new Invalid([{ pointer: '/predecessor', message: `${model} has no version ${predecessor}.` }]);
-		const parentRef = predecessor ?? before.filter(({ state }) => state !== 'withdrawn').at(-1)?.ref;
-		const version = part(model, before.length + 1);
-		record(ctx, tx, actor, grant, {
-			type: 'version.drafted',
-			subjects: [model, version],
-			payload: {
-				version,
-				model,
-				...written,
-				reason: reason ?? 'First version.',
-				...(parentRef !== undefined && { predecessor: parentRef })
-			}
-		});
+		const version = enterDraft(ctx, tx, actor, asked, written);
+		enterSubmission(ctx, tx, actor, version);
 		return version;
 	});
 };
@@ -135,26 +156,27 @@ export const reviseDraft = (
 	});
 };
 
+const enterSubmission = (ctx: Ctx, tx: Tx, actor: Actor, version: string): void => {
+	const model = parent(version);
+	const grant = allow(ctx, tx, actor, 'version.submit', { model });
+	const row = requireVersion(tx, version);
+	requireStep(row, 'submit');
+	const specification = JSON.parse(row.specification) as Specification;
+	const issues = signIssues(specification, requireSigns(tx, model, specification, 'version.submit'));
+	if (issues.length > 0) throw new Invalid(issues);
+	record(ctx, tx, actor, grant, {
+		type: 'version.submitted',
+		subjects: [model, version],
+		payload: { version, model, digest: row.digest }
+	});
+};
+
 /**
  * Submits a draft: from here on no field of it can change.
  * @throws Refused `signs-first`; Invalid where the specification says another sign or range than was declared
  */
-export const submitVersion = (ctx: Ctx, actor: Actor, version: string): void => {
-	const model = parent(version);
-	ctx.write((tx) => {
-		const grant = allow(ctx, tx, actor, 'version.submit', { model });
-		const row = requireVersion(tx, version);
-		requireStep(row, 'submit');
-		const specification = JSON.parse(row.specification) as Specification;
-		const issues = signIssues(specification, requireSigns(tx, model, specification, 'version.submit'));
-		if (issues.length > 0) throw new Invalid(issues);
-		record(ctx, tx, actor, grant, {
-			type: 'version.submitted',
-			subjects: [model, version],
-			payload: { version, model, digest: row.digest }
-		});
-	});
-};
+export const submitVersion = (ctx: Ctx, actor: Actor, version: string): void =>
+	ctx.write((tx) => enterSubmission(ctx, tx, actor, version));
 
 /** Withdraws a draft or a submitted version, with the reason; it stays readable. */
 export const withdrawVersion = (ctx: Ctx, actor: Actor, version: string, typed: string): void => {

@@ -12,8 +12,8 @@ import { countsByPurpose, finishedRuns, runByRef, runsPage, type RunFilter } fro
 
 export interface RunListing extends Omit<RunFilter, 'models'> {
 	/** Reference of the last run already seen: the page goes on with older ones. */
-	readonly before?: string;
-	readonly limit?: number;
+	readonly before?: string | undefined;
+	readonly limit?: number | undefined;
 }
 
 export interface RunPage {

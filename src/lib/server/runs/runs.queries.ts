@@ -30,13 +30,13 @@ export const unfinishedRuns = (q: Q) =>
 		.orderBy('run.ref');
 
 export interface RunFilter {
-	readonly model?: string;
-	readonly models?: readonly string[];
-	readonly version?: string;
-	readonly vintage?: string;
-	readonly purpose?: 'planned' | 'validation' | 'exploratory';
-	readonly state?: 'requested' | 'finished' | 'failed' | 'cancelled';
-	readonly requestedBy?: string;
+	readonly model?: string | undefined;
+	readonly models?: readonly string[] | undefined;
+	readonly version?: string | undefined;
+	readonly vintage?: string | undefined;
+	readonly purpose?: 'planned' | 'validation' | 'exploratory' | undefined;
+	readonly state?: 'requested' | 'finished' | 'failed' | 'cancelled' | undefined;
+	readonly requestedBy?: string | undefined;
 }
 
 /** Runs, newest first; `before` is the reference of the last one already seen. */
