@@ -41,7 +41,11 @@ const ungroup = (text: string, separator: string): string | undefined => {
 	return fits ? groups.join('') + (cut === -1 ? '' : text.slice(cut)) : undefined;
 };
 
+/** No figure with a mark is longer; the patterns below are not for text of any length. */
+const longestMarked = 64;
+
 const marked = (text: string, mark: DecimalMark): boolean => {
+	if (text.length > longestMarked) return false;
 	const bare = text
 		.replace(/^(?:\p{Sc}|[A-Z]{3}|[<>~≈])\s*/u, '')
 		.replace(/\s*(?:[%‰*†‡°§#¹²³]{1,3}|\p{Sc}|[A-Za-z]{1,3}|\([A-Za-z*]{1,3}\)|\[[A-Za-z\d]{1,3}\])$/u, '');
