@@ -8,10 +8,12 @@ import {
 	ruleOfThumbLag,
 	truncationLag
 } from '$lib/econometrics/regression/bandwidth';
+import { durbinWatsonP } from '$lib/econometrics/regression/durbin-watson-p';
 import { leastSquares } from '$lib/econometrics/regression/least-squares';
 import { neweyWest } from '$lib/econometrics/regression/newey-west';
 import { coefficient, ols } from '$lib/econometrics/regression/ols';
 import { robustErrors } from '$lib/econometrics/regression/robust';
+import { drawNormal, mulberry32 } from '$lib/econometrics/random/mulberry32';
 import { designOf } from '$lib/econometrics/series/design';
 import { constant, indicator } from '$lib/econometrics/series/deterministic';
 import { apart, drawSample, must, withColumn } from './sample';
@@ -225,5 +227,31 @@ describe('bandwidths', () => {
 		);
 		expect(apart(a.andrews, b.andrews)).toBeLessThan(1e-10);
 		expect(apart(a.neweyWest1994, b.neweyWest1994)).toBeLessThan(1e-10);
+	});
+});
+
+describe('the p-value of the Durbin-Watson statistic', () => {
+	it('is the share of samples without autocorrelation that fall below', () => {
+		const { design } = drawSample(17, 30, 3);
+		const next = mulberry32(99);
+		const draw = () =>
+			must(
+				ols(
+					Float64Array.from({ length: 30 }, () => drawNormal(next)),
+					design
+				)
+			);
+		const observed = draw();
+		const draws = 4000;
+		let below = 0;
+		for (let i = 0; i < draws; i++) if (draw().dw <= observed.dw) below++;
+		const exact = durbinWatsonP(observed);
+		expect(exact.by).toBe('exact');
+		expect(Math.abs(below / draws - exact.p)).toBeLessThan(0.025);
+	});
+
+	it('comes from the normal distribution from 100 rows on', () => {
+		const { y, design } = drawSample(17, 100, 3);
+		expect(durbinWatsonP(must(ols(y, design))).by).toBe('normal');
 	});
 });

@@ -15,6 +15,11 @@ import { kolmogorovP, olsCusum } from '$lib/econometrics/stability/ols-cusum';
 import { recursiveResiduals } from '$lib/econometrics/stability/recursive-residuals';
 import { scoreSupF } from '$lib/econometrics/stability/score-sup-f';
 import { supF } from '$lib/econometrics/stability/sup-f';
+import {
+	recursiveCoefficients,
+	rollingCoefficients,
+	usualWindow
+} from '$lib/econometrics/stability/windowed-coefficients';
 import { apart, drawSample, must, rowsOf, withColumn, type Sample } from './sample';
 
 const fitOf = ({ y, design }: Sample): OlsFit => must(ols(y, design));
@@ -275,4 +280,18 @@ describe('Nyblom-Hansen', () => {
 			pApproximate: null
 		});
 	});
+});
+
+it('windowed estimates start and end where they say, and are refused outside the sample', () => {
+	const fit = fitOf(drawSample(41, 50, 3));
+	const whole = must(recursiveCoefficients(fit, [30, 50]))[1]!;
+	expect(whole).toMatchObject({ from: 1, to: 50, coef: fit.coef, se: fit.se });
+	expect(must(rollingCoefficients(fit, 20, [1, 31])).map((w) => [w.from, w.to])).toEqual([
+		[1, 20],
+		[31, 50]
+	]);
+	expect(usualWindow(50, 3)).toBe(20);
+	expect(usualWindow(50, 12)).toBe(24);
+	expect(rollingCoefficients(fit, 20, [32])).toMatchObject({ refused: 'lag' });
+	expect(recursiveCoefficients(fit, [3])).toMatchObject({ refused: 'too-short' });
 });

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { bandwidths } from '$lib/econometrics/regression/bandwidth';
+import { durbinWatsonP } from '$lib/econometrics/regression/durbin-watson-p';
 import { neweyWest } from '$lib/econometrics/regression/newey-west';
 import type { OlsFit } from '$lib/econometrics/regression/ols';
 import { robustErrors, type RobustKind } from '$lib/econometrics/regression/robust';
@@ -57,7 +58,8 @@ const methods: Readonly<Record<string, (fit: OlsFit, check: Check) => Record<str
 	ecm_one_step: olsValues,
 	robust_se: robustValues,
 	hac_bandwidth: bandwidthValues,
-	durbin_watson: (fit) => ({ dw: fit.dw })
+	durbin_watson: (fit) => ({ dw: fit.dw }),
+	durbin_watson_p: (fit) => ({ p: durbinWatsonP(fit).p })
 };
 
 /** What an error-correction equation has beyond its regression; held against the reference in its own test. */
@@ -69,7 +71,8 @@ const COUNTS: Readonly<Record<string, readonly [checks: number, numbers: number]
 	ecm_one_step: [14, 3273],
 	robust_se: [12, 938],
 	hac_bandwidth: [8, 32],
-	durbin_watson: [12, 12]
+	durbin_watson: [12, 12],
+	durbin_watson_p: [12, 12]
 };
 
 describe.each(Object.keys(methods))('%s against the reference', (method) => {
@@ -85,4 +88,14 @@ describe.each(Object.keys(methods))('%s against the reference', (method) => {
 		}
 		expect([all.length, compared]).toEqual(COUNTS[method]);
 	});
+});
+
+it('Durbin-Watson: with enough nodes the series serves where 15 nodes fail', () => {
+	const { of } = checksOf('durbin_watson_p').find(({ of }) => of.case === 'reg_nile')!;
+	const fit = equationOf(of, 'ols');
+	expect(durbinWatsonP(fit).by).toBe('normal');
+	// Imhof's (1961) inversion gives 0.839032; with 97 weights the alternating sum keeps four digits.
+	const exact = durbinWatsonP(fit, 200);
+	expect(exact.by).toBe('exact');
+	expect(exact.p).toBeCloseTo(0.839032, 3);
 });

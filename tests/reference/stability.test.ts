@@ -8,9 +8,13 @@ import { nyblomHansen } from '$lib/econometrics/stability/nyblom-hansen';
 import { olsCusum } from '$lib/econometrics/stability/ols-cusum';
 import { recursiveResiduals } from '$lib/econometrics/stability/recursive-residuals';
 import { supF, supFBetween, type SupF } from '$lib/econometrics/stability/sup-f';
+import {
+	recursiveCoefficients,
+	rollingCoefficients
+} from '$lib/econometrics/stability/windowed-coefficients';
 import published from './published.json';
 import { equationOf } from './equations';
-import { checksOf, compare, must, type Check } from './reference';
+import { checksOf, compare, listOf, must, type Check } from './reference';
 
 type Values = Record<string, unknown>;
 
@@ -73,6 +77,15 @@ function nyblomHansenValues(fit: OlsFit): Values {
 	};
 }
 
+function recursiveValues(fit: OlsFit, { params }: Check): Values {
+	return { coef: must(recursiveCoefficients(fit, listOf(params.ends as number))).map((w) => w.coef) };
+}
+
+function rollingValues(fit: OlsFit, { params }: Check): Values {
+	const window = params.window as number;
+	return { coef: must(rollingCoefficients(fit, window, listOf(params.starts as number))).map((w) => w.coef) };
+}
+
 /** Of a mean alone: the same statistics over a sample trimmed at both ends by the same number of rows. */
 function meanBreakValues(fit: OlsFit, { params }: Check): Values {
 	const from = Math.floor((params.trim as number) * fit.nobs);
@@ -107,6 +120,8 @@ const methods: readonly Method[] = [
 	{ method: 'chow_predictive', valuesOf: predictiveChowValues, counts: [12, 72] },
 	{ method: 'quandt_andrews', valuesOf: (fit) => breakValues(fit, must(supF(fit))), counts: [19, 190] },
 	{ method: 'nyblom_hansen', valuesOf: nyblomHansenValues, counts: [12, 161] },
+	{ method: 'recursive_coefficients', valuesOf: recursiveValues, counts: [8, 425] },
+	{ method: 'rolling_coefficients', valuesOf: rollingValues, counts: [8, 340] },
 	{ method: 'mean_break', valuesOf: meanBreakValues, counts: [2, 18], except: ['rss', 'bic', 'breaks'] }
 ];
 
