@@ -1,5 +1,16 @@
 import { createPrivateKey, generateKeyPairSync, type KeyObject } from 'node:crypto';
-import { closeSync, constants, fstatSync, fsyncSync, openSync, readFileSync, writeSync } from 'node:fs';
+import {
+	closeSync,
+	constants,
+	fstatSync,
+	fsyncSync,
+	linkSync,
+	openSync,
+	readFileSync,
+	rmSync,
+	writeSync
+} from 'node:fs';
+import { dirname } from 'node:path';
 import { rawPublicKey } from '$lib/chain/ed25519';
 import { StartFault } from '../start-fault';
 
@@ -41,20 +52,36 @@ export const readKey = (file: string): LogKey => {
 	}
 };
 
-/** Makes a key for an empty register; never over a file that exists. @throws StartFault 78 */
-export const makeKey = (file: string): LogKey => {
-	const pem = generateKeyPairSync('ed25519').privateKey.export({ format: 'pem', type: 'pkcs8' }) as string;
-	let descriptor: number;
+const flushed = (
+	path: string,
+	flags: string | number,
+	work: (descriptor: number) => void,
+	mode?: number
+): void => {
+	const descriptor = openSync(path, flags, mode);
 	try {
-		descriptor = openSync(file, 'wx', 0o600);
-	} catch {
-		throw refused(`The log key ${file} cannot be written`);
-	}
-	try {
-		writeSync(descriptor, pem);
+		work(descriptor);
 		fsyncSync(descriptor);
 	} finally {
 		closeSync(descriptor);
+	}
+};
+
+/**
+ * Makes a key for an empty register; never over a file that exists. The file appears whole or not at all, and is durable
+ * before the first entry names it. @throws StartFault 78
+ */
+export const makeKey = (file: string): LogKey => {
+	const pem = generateKeyPairSync('ed25519').privateKey.export({ format: 'pem', type: 'pkcs8' }) as string;
+	const partial = `${file}.partial`;
+	try {
+		rmSync(partial, { force: true });
+		flushed(partial, 'wx', (descriptor) => void writeSync(descriptor, pem), 0o600);
+		linkSync(partial, file);
+		rmSync(partial);
+		flushed(dirname(file), 'r', () => undefined);
+	} catch {
+		throw refused(`The log key ${file} cannot be written`);
 	}
 	return readKey(file);
 };

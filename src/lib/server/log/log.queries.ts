@@ -62,6 +62,5 @@ const about = (q: Q, refs: readonly string[]) =>
 		.select('seq')
 		.where('ref', 'in', [...refs]);
 
-/** The first checkpoint whose tree holds a folio. */
-export const checkpointOver = (q: Q, seq: number) =>
-	q.selectFrom('checkpoint').selectAll().where('size', '>', seq).orderBy('size', 'desc').limit(1);
+export const checkpointAt = (q: Q, size: number) =>
+	q.selectFrom('checkpoint').select('size').where('size', '=', size);
