@@ -43,5 +43,5 @@ export const groupSentence = ({ verdict, primary, loweredBy, reason }: Group): s
 		return `${decides} is not assessable${reason ? `: ${reasonWords[reason]}` : ''}.`;
 	if (loweredBy.length > 0)
 		return `${decides} holds; lowered to query by ${loweredBy.map(checkTitle).join(', ')}.`;
-	return `${decides} decides.`;
+	return `Decided by: ${decides}.`;
 };

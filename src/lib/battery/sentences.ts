@@ -18,17 +18,23 @@ const criticalSource: Readonly<Record<string, string>> = {
 
 /** What a test found, and what it did not find; never more than it can say. */
 const readings: Readonly<Record<string, readonly [rejected: string, not: string]>> = {
-	'cointegration.engle-granger': ['no cointegration is rejected', 'cointegration is not shown'],
-	'cointegration.ecm-t': ['no relation in levels is rejected', 'a relation in levels is not shown'],
-	'cointegration.bounds': ['no relation in levels is rejected', 'a relation in levels is not shown'],
+	'cointegration.engle-granger': ['the null of no cointegration is rejected', 'cointegration is not shown'],
+	'cointegration.ecm-t': [
+		'the null of no relation in levels is rejected',
+		'a relation in levels is not shown'
+	],
+	'cointegration.bounds': [
+		'the null of no relation in levels is rejected',
+		'a relation in levels is not shown'
+	],
 	'adjustment.significance': ['a speed of zero is rejected', 'a speed above zero is not shown'],
-	'long-run.precision': ['slopes of zero are rejected', 'not every slope is shown to differ from zero'],
+	'long-run.precision': ['every slope differs from zero', 'not every slope is shown to differ from zero'],
 	'residual.stationarity-refit': [
-		'a unit root in the gap is rejected',
+		'the null of a unit root in the gap is rejected',
 		'stationarity of the gap is not shown'
 	],
 	'residual.stationarity-held': [
-		'a unit root in the gap is rejected',
+		'the null of a unit root in the gap is rejected',
 		'stationarity of the gap is not shown'
 	],
 	'residual.autocorrelation': ['autocorrelation was found', 'no autocorrelation was found'],
@@ -45,8 +51,17 @@ const readings: Readonly<Record<string, readonly [rejected: string, not: string]
 	'stability.sup-f': ['a sign of a break was found', 'no sign of a break was found']
 };
 
+const symbols: Readonly<Record<string, string>> = {
+	tau: 'τ',
+	eta: 'η',
+	lambda: 'λ',
+	'speed-t': '|t| of the speed'
+};
+
 const statisticText = ({ name, value }: Statistic): string =>
-	value === null ? `${name} is not defined` : `${name} = ${significant(value)}`;
+	value === null
+		? `${symbols[name] ?? name} is not defined`
+		: `${symbols[name] ?? name} = ${significant(value)}`;
 
 const criticalText = (id: string, values: readonly CriticalValue[] | undefined): string | undefined => {
 	const value = values?.find(({ level }) => level === '5%') ?? values?.[0];
@@ -65,16 +80,25 @@ const closed = (text: string): string => (/[.?!]$/.test(text) ? text : `${text}.
 const joined = (...parts: readonly (string | undefined)[]): string =>
 	parts.filter((part) => part !== undefined && part !== '').join(', ');
 
+/** The bounds of the first part that has them. */
+const boundsText = (check: Check): string | undefined => {
+	const parameters = check.parts?.find((part) => part.parameters?.['boundI0'] !== undefined)?.parameters;
+	if (!parameters) return undefined;
+	const [low, high] = [Number(parameters['boundI0']), Number(parameters['boundI1'])];
+	const table = check.parameters['table'];
+	return `${String(parameters['level']).replace('%', ' %')} bounds ${significant(low)} and ${significant(high)}${table === undefined ? '' : ` (${String(table)})`}`;
+};
+
 const plain = (check: Check): string => {
 	const reading = readings[check.id];
 	const evidence = joined(
 		check.statistic && statisticText(check.statistic),
-		criticalText(check.id, check.criticalValues),
+		criticalText(check.id, check.criticalValues) ?? boundsText(check),
 		pText(check),
 		check.n === undefined ? undefined : `n = ${check.n}`
 	);
-	if (!reading || check.rejected === undefined) return evidence === '' ? '' : closed(capital(evidence));
-	return closed(`${capital(evidence)}: ${check.rejected ? reading[0] : reading[1]}`);
+	if (!reading || check.rejected === undefined) return evidence === '' ? '' : closed(evidence);
+	return closed(`${evidence}: ${check.rejected ? reading[0] : reading[1]}`);
 };
 
 const figureOf = (check: Check, name: string): number | undefined => {
@@ -100,7 +124,6 @@ const orders = (check: Check): string =>
 						? `for ${about} the tests contradict each other`
 						: `${about} reads as ${String(parameters['order'])}`
 			)
-			.map((text, i) => (i === 0 ? capital(text) : text))
 			.join('; ')
 	);
 
@@ -229,7 +252,7 @@ export const partSentence = (id: string, part: Part): string => {
 		pText(part),
 		part.n === undefined ? undefined : `n = ${part.n}`
 	);
-	return evidence === '' ? '' : closed(capital(evidence));
+	return evidence === '' ? '' : closed(evidence);
 };
 
 /** The title of a check; an unknown id stands for itself. */

@@ -155,6 +155,7 @@ export const longRunPrecision = onModel(
 		const open = useFieller && parts.some(({ parameters }) => parameters?.['fieller'] !== 'interval');
 		return checkOf(id, {
 			...rest,
+			rejected: shown,
 			verdict: shown ? 'holds' : 'query',
 			because: open ? ['long-run-not-determined'] : [],
 			statistic: { name: 'speed-t', value: ratio },
