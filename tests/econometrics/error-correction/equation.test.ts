@@ -141,6 +141,11 @@ describe('estimators', () => {
 		).toBe('domain');
 	});
 
+	it('refuses an imposed relation with a dummy that the equation does not have', () => {
+		const relation = { constant: 0, trend: 0, slopes: [], dummies: [{ name: 'regime', value: 1 }] };
+		expect(reasonOf(imposedLongRun(equation, sample, relation))).toBe('domain');
+	});
+
 	it('a long-run dummy is part of the gap', () => {
 		const step = new Float64Array(110).map((_, i) => (i >= 55 ? 1 : 0));
 		const shifted = {

@@ -31,7 +31,7 @@ interface Levels {
  * long run, where tables do not hold. Under the null dy follows a constant, the changes of the long-run dummies
  * and the short-run terms; its residuals, spread by sqrt(n / (n - k)), are drawn, paths cumulated and the whole
  * equation estimated again with drivers and dummies as observed. Davison & Hinkley (1997) Bootstrap Methods and
- * their Application, 4.4. Refuses `given` where coefficients are fixed.
+ * their Application, chapter 4. Refuses `given` where coefficients are fixed.
  */
 export function bootstrapEcm(
 	equation: Equation,

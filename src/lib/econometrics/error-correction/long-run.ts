@@ -31,7 +31,7 @@ const isOwnLevel = (term: Term) => term.kind === 'own-level' && term.lag === 1;
 /**
  * Long-run coefficients theta = b / lambda of an equation with free levels, errors by the delta method. Bardsen
  * (1989) Oxford Bulletin 51, 345-350; Banerjee, Dolado, Galbraith & Hendry (1993) Co-integration,
- * Error-correction, and the Econometric Analysis of Non-stationary Data, 2.4. Refuses `domain` at lambda = 0.
+ * Error-correction, and the Econometric Analysis of Non-stationary Data. Refuses `domain` at lambda = 0.
  */
 export function longRun(coefficients: Coefficients): LongRun | Refusal {
 	const lambda = -valueOf(coefficients, isOwnLevel);

@@ -12,7 +12,7 @@ export interface DriverDelay {
 
 /**
  * Mean and median lag of a driver in an equation in levels: sum l delta(l) / sum delta(l) plus
- * sum i mu(i) / (1 - sum mu(i)). Hendry (1995) Dynamic Econometrics, 6.3.
+ * sum i mu(i) / (1 - sum mu(i)). Hendry (1995) Dynamic Econometrics.
  */
 export function driverDelay(adl: Coefficients, series: string, horizon = 400): DriverDelay {
 	const mu = ownLags(adl);

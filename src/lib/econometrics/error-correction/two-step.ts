@@ -41,6 +41,8 @@ export function imposedLongRun(
 ): ErrorCorrectionFit | Refusal {
 	const absent = relation.slopes.find(({ series }) => sample.series.get(series)?.length !== sample.T);
 	if (absent) return refuse('domain', `the sample has no series ${absent.series}`);
+	const unknown = relation.dummies.find(({ name }) => !equation.dummies.some((dummy) => dummy.name === name));
+	if (unknown) return refuse('domain', `the equation has no dummy ${unknown.name}`);
 	const gap = gapFrom(relation, equation, sample);
 	const fit = onGap(equation, sample, gap, covarianceOf);
 	if (isRefusal(fit)) return fit;
