@@ -2,11 +2,12 @@ import type { Actor, PersonId, Role } from '$lib/domain/actor';
 import { Absent } from '$lib/domain/faults';
 import type { Ctx } from '$lib/server/context';
 import type { Schema } from '$lib/server/db/schema';
-import { liveCredentials, sessionsOf, tokensOf, unusedCodes } from '$lib/server/auth/auth.queries';
+import { sessionsOf, tokensOf, unusedCodes } from '$lib/server/auth/auth.queries';
 import { closeSession } from '$lib/server/auth/sessions';
 import { personIn } from './acts';
 import { allow } from './allow';
 import { directoryOf } from './directory';
+import { shownPasskeys, type Passkey } from './listing';
 import { rolesOf } from './standing';
 
 export interface Account {
@@ -14,13 +15,7 @@ export interface Account {
 	readonly name: string;
 	readonly mail: string;
 	readonly roles: readonly Role[];
-	readonly passkeys: readonly {
-		readonly id: string;
-		readonly kind: string;
-		readonly enrolledAt: string;
-		readonly synced: boolean;
-		readonly counterFell: boolean;
-	}[];
+	readonly passkeys: readonly Passkey[];
 	readonly sessions: readonly {
 		readonly label: string;
 		readonly means: string;
@@ -55,13 +50,7 @@ export const accountOf = (ctx: Ctx, actor: Actor): Account => {
 		name: row?.name ?? person,
 		mail: row?.mail ?? '',
 		roles: rolesOf(read, person, now),
-		passkeys: read.all<Schema['credential']>(liveCredentials(read.q, person)).map((one) => ({
-			id: one.id,
-			kind: one.kind,
-			enrolledAt: one.enrolled_at,
-			synced: one.backup_eligible === 1,
-			counterFell: one.counter_fell_at !== null
-		})),
+		passkeys: shownPasskeys(read, person),
 		sessions: read.all<Schema['session']>(sessionsOf(read.q, person)).map((one) => ({
 			label: one.label,
 			means: one.means,

@@ -1,7 +1,9 @@
 import type { Actor, PersonId, Role } from '$lib/domain/actor';
 import { Absent } from '$lib/domain/faults';
 import type { Ctx } from '$lib/server/context';
+import type { Handle } from '$lib/server/db/handle';
 import type { Schema } from '$lib/server/db/schema';
+import { liveCredentials } from '$lib/server/auth/auth.queries';
 import { allow, may } from './allow';
 import { directory, everyone, grantsOf, holdersAt, openProposals, rolesOfEveryone } from './people.queries';
 import type { State } from './standing';
@@ -63,6 +65,35 @@ export const rolesHeld = (ctx: Ctx, actor: Actor, person: PersonId): readonly Ro
 		by: names.get(granted_by) ?? granted_by,
 		entry
 	}));
+};
+
+export interface Passkey {
+	readonly id: string;
+	readonly kind: 'passkey' | 'seat';
+	readonly enrolledAt: string;
+	/** Eligible for backup: a synced passkey. */
+	readonly synced: boolean;
+	/** Its counter did not rise once: perhaps a copied key. */
+	readonly counterFell: boolean;
+	/** The entry that enrolled it, or changed it last. */
+	readonly entry: number;
+}
+
+/** Credentials as pages show them. */
+export const shownPasskeys = (handle: Handle, person: PersonId): readonly Passkey[] =>
+	handle.all<Schema['credential']>(liveCredentials(handle.q, person)).map((one) => ({
+		id: one.id,
+		kind: one.kind,
+		enrolledAt: one.enrolled_at,
+		synced: one.backup_eligible === 1,
+		counterFell: one.counter_fell_at !== null,
+		entry: one.entry
+	}));
+
+/** A person's credentials in use. @throws Refused */
+export const passkeysOf = (ctx: Ctx, actor: Actor, person: PersonId): readonly Passkey[] => {
+	allow(ctx, ctx.read, actor, 'people.read');
+	return shownPasskeys(ctx.read, person);
 };
 
 /** Enrolled persons who hold a role, by name: for choosing one. */
