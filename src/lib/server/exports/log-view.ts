@@ -51,40 +51,68 @@ const visible = (ctx: Ctx, actor: Actor): readonly string[] | undefined => {
 	return own;
 };
 
-const line = (ctx: Ctx, entry: Entry, names: ReadonlyMap<string, string>): EntryLine => ({
-	seq: entry.seq,
-	at: entry.at,
-	type: entry.type,
-	actor: { id: entry.actor, name: names.get(entry.actor) ?? entry.actor },
-	words: entryWords(entry, (id) => names.get(id) ?? id),
-	subjects: entry.subjects.map(({ ref }) => ref),
-	means: entry.auth.means,
-	changes: changesOf(ctx.read, entry.seq)
-});
+/** Ids of people where they stand alone, replaced by their names. */
+const named = (value: unknown, names: ReadonlyMap<string, string>): unknown => {
+	if (typeof value === 'string') return names.get(value) ?? value;
+	if (Array.isArray(value)) return value.map((item) => named(item, names));
+	if (typeof value !== 'object' || value === null) return value;
+	return Object.fromEntries(Object.entries(value).map(([key, member]) => [key, named(member, names)]));
+};
 
-/** A page of the log, newest first; `after` alone reads forwards to the next newer page. @throws Refused */
-export const logPage = (ctx: Ctx, actor: Actor, filter: EntryFilter, forwards = false): LogPage => {
-	const within = visible(ctx, actor);
-	const scoped = { ...filter, ...(within && { within }) };
-	const { entries: found, more } = listEntries(ctx.read, scoped, forwards ? 'oldest' : 'newest', perPage);
-	const entries = forwards ? [...found].reverse() : found;
-	const names = ctx.people.names(entries.flatMap(peopleIn));
-	const [first, last] = [entries[0], entries.at(-1)];
-	const newer =
-		first && listEntries(ctx.read, { ...scopedBy(scoped), after: first.seq }, 'oldest', 1).entries.length > 0;
-	const older = forwards
-		? last && listEntries(ctx.read, { ...scopedBy(scoped), before: last.seq }, 'newest', 1).entries.length > 0
-		: more;
+const idForm = /p_[a-z2-7]{26}/g;
+
+const line = (ctx: Ctx, entry: Entry, known: ReadonlyMap<string, string>): EntryLine => {
+	const changes = changesOf(ctx.read, entry.seq);
+	// A row may speak of people that its entry does not.
+	const others = (JSON.stringify(changes).match(idForm) ?? []).filter((id) => !known.has(id)) as PersonId[];
+	const names = others.length === 0 ? known : new Map([...known, ...ctx.people.names(others)]);
 	return {
-		entries: entries.map((entry) => line(ctx, entry, names)),
-		whole: within === undefined,
-		...(older && last && { older: last.seq }),
-		...(newer && first && { newer: first.seq })
+		seq: entry.seq,
+		at: entry.at,
+		type: entry.type,
+		actor: { id: entry.actor, name: names.get(entry.actor) ?? entry.actor },
+		words: entryWords(entry, (id) => names.get(id) ?? id),
+		subjects: entry.subjects.map(({ ref }) => ref),
+		means: entry.auth.means,
+		changes: changes.map((change) => named(change, names) as RowChange)
 	};
 };
 
-/** The filter without its place in the log: what stays the same from page to page. */
-const scopedBy = ({ after: _after, before: _before, ...rest }: EntryFilter): EntryFilter => rest;
+/** Where a page starts: below a folio (older), above one (newer), or at the newest entry. */
+export interface Cursor {
+	readonly below?: number;
+	readonly above?: number;
+}
+
+const narrowed = (filter: EntryFilter, { below, above }: Cursor): EntryFilter => {
+	const before = Math.min(filter.before ?? Infinity, below ?? Infinity);
+	const after = Math.max(filter.after ?? -1, above ?? -1);
+	return { ...filter, ...(before < Infinity && { before }), ...(after >= 0 && { after }) };
+};
+
+/** A page of the log, newest first, under a filter. @throws Refused */
+export const logPage = (ctx: Ctx, actor: Actor, filter: EntryFilter, cursor: Cursor = {}): LogPage => {
+	const within = visible(ctx, actor);
+	const scoped = { ...filter, ...(within && { within }) };
+	const forwards = cursor.above !== undefined;
+	const found = listEntries(
+		ctx.read,
+		narrowed(scoped, cursor),
+		forwards ? 'oldest' : 'newest',
+		perPage
+	).entries;
+	const entries = forwards ? [...found].reverse() : found;
+	const names = ctx.people.names(entries.flatMap(peopleIn));
+	const any = (to: Cursor): boolean =>
+		listEntries(ctx.read, narrowed(scoped, to), 'newest', 1).entries.length > 0;
+	const [first, last] = [entries[0]?.seq, entries.at(-1)?.seq];
+	return {
+		entries: entries.map((entry) => line(ctx, entry, names)),
+		whole: within === undefined,
+		...(last !== undefined && any({ below: last }) && { older: last }),
+		...(first !== undefined && any({ above: first }) && { newer: first })
+	};
+};
 
 /** Entries in the order they were written, for programs; `next` is the folio to read on after. @throws Refused */
 export const entriesAfter = (
