@@ -18,7 +18,9 @@ const stop = (fault) => {
 	process.exit(exitCode);
 };
 
-const { handler } = await import('../build/handler.js').catch(stop);
+// Not a literal: the build is no source to be type-checked.
+const built = new URL('../build/handler.js', import.meta.url).href;
+const { handler } = await import(built).catch(stop);
 
 const server = createServer(
 	{ headersTimeout: 10_000, requestTimeout: 120_000, keepAliveTimeout: 5_000, maxHeaderSize: 16 * 1024 },
