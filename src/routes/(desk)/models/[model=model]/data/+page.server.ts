@@ -21,16 +21,18 @@ export const load: PageServerLoad = (event) =>
 				ref,
 				name,
 				models,
-				vintages: vintages.map(({ ref: vintage, vintageDate, from, to, observations, frequency, columns, at }) => ({
-					ref: vintage,
-					vintageDate,
-					from,
-					to,
-					observations,
-					frequency,
-					used: columns.filter(({ role }) => role !== 'left-out').map(({ name: column }) => column),
-					at
-				}))
+				vintages: vintages.map(
+					({ ref: vintage, vintageDate, from, to, observations, frequency, columns, at }) => ({
+						ref: vintage,
+						vintageDate,
+						from,
+						to,
+						observations,
+						frequency,
+						used: columns.filter(({ role }) => role !== 'left-out').map(({ name: column }) => column),
+						at
+					})
+				)
 			}))
 		};
 	});

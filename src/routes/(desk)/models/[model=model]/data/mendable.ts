@@ -32,8 +32,7 @@ export const mendable = async <T extends object>(
 					...(code === undefined ? {} : { code })
 				}))
 			});
-		if (fault instanceof Conflict)
-			return fail(409, { mend: [{ field: '', message: fault.message }] });
+		if (fault instanceof Conflict) return fail(409, { mend: [{ field: '', message: fault.message }] });
 		return refuseWith(event, fault);
 	}
 };

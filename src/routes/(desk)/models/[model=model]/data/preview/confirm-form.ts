@@ -57,7 +57,13 @@ export const typedOf = (data: FormData): Typed => {
 			notes: field('notes')
 		});
 	}
-	return { dataset: text('dataset'), name: text('name'), vintageDate: text('vintageDate'), source: text('source'), columns };
+	return {
+		dataset: text('dataset'),
+		name: text('name'),
+		vintageDate: text('vintageDate'),
+		source: text('source'),
+		columns
+	};
 };
 
 /** What the verb is given: a column without provider takes the one given for all; `new` opens a dataset. */
@@ -70,5 +76,8 @@ export const inputOf = (
 	name: typed.name,
 	vintageDate: typed.vintageDate,
 	// The verb judges the words; a form can send any.
-	columns: typed.columns.map((column) => ({ ...column, source: column.source || typed.source })) as VintageInput['columns']
+	columns: typed.columns.map((column) => ({
+		...column,
+		source: column.source || typed.source
+	})) as VintageInput['columns']
 });
