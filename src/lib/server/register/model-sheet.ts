@@ -45,22 +45,24 @@ export interface ModelSheet extends ModelHeader {
 	/** Adopted policy the tier and dates follow. */
 	readonly policy: { readonly release: string; readonly digest: string };
 	readonly entry: number;
-	readonly may: Readonly<
-		Record<
-			| 'edit'
-			| 'declare'
-			| 'declareAsValidator'
-			| 'draft'
-			| 'confirmTier'
-			| 'override'
-			| 'agree'
-			| 'assign'
-			| 'store',
-			boolean
-		> &
-			Record<'runPlanned' | 'runValidation' | 'runExploratory', boolean>
-	>;
+	readonly may: Readonly<Record<Right, boolean>>;
 }
+
+/** What a reader can do with a model, as the permission table answers. */
+export type Right =
+	| 'edit'
+	| 'declare'
+	| 'declareAsValidator'
+	| 'draft'
+	| 'submit'
+	| 'confirmTier'
+	| 'override'
+	| 'agree'
+	| 'assign'
+	| 'store'
+	| 'runPlanned'
+	| 'runValidation'
+	| 'runExploratory';
 
 type ModelRow = NonNullable<ReturnType<typeof rowOf>>;
 const rowOf = (handle: Handle, ref: string) => handle.first(modelByRef(handle.q, ref));
@@ -121,6 +123,7 @@ const rightsOf = (ctx: Ctx, handle: Handle, actor: Actor, row: ModelRow): ModelS
 		declare: can('driver.declare'),
 		declareAsValidator: can('prior.declare'),
 		draft: can('version.draft'),
+		submit: can('version.submit'),
 		confirmTier: can('tier.confirm'),
 		override: can('tier.override'),
 		agree: row.override_by !== null && can('tier.override', { first: row.override_by }),
