@@ -1,7 +1,10 @@
 import type { Ctx, Facts, People, Projectors } from '$lib/server/context';
 import type { Config } from '$lib/server/config';
 import { openLog, type OpenedLog } from '$lib/server/log/open';
+import { people } from '$lib/server/people/directory';
+import { releasedPolicies } from '$lib/server/policy/released';
 import { projectors as everyProjector } from '$lib/server/projectors';
+import { modelFacts, partiesOf } from '$lib/server/register/facts';
 import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -48,17 +51,18 @@ export const testRegister = async (options: TestRegisterOptions = {}): Promise<T
 		projectors,
 		now: clock.now
 	});
+	const known = { config, now: clock.now, blobs: opened.blobs, policies: releasedPolicies() };
 	const ctx: Ctx = {
-		config,
-		now: clock.now,
+		...known,
 		read: opened.read,
 		write: opened.write,
 		log: opened.log,
 		projectors,
-		facts: options.facts ?? { model: () => undefined, parties: () => [] },
-		blobs: opened.blobs,
-		people: options.people ?? { names: (ids) => new Map([...ids].map((id) => [id, id])) },
-		policies: new Map(),
+		facts: options.facts ?? {
+			model: (handle, ref) => modelFacts(known, handle, ref),
+			parties: partiesOf
+		},
+		people: options.people ?? people(opened.read),
 		// No test of a room computes: runs have tests of their own with a real pool.
 		pool: undefined as unknown as Ctx['pool']
 	};
