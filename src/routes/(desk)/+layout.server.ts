@@ -1,6 +1,7 @@
 import { roleWords } from '$lib/domain/roles';
 import { serve } from '$lib/server/http/serve';
 import { logHead } from '$lib/server/log/head';
+import { may } from '$lib/server/people/allow';
 import { reviewsDue } from '$lib/server/register/reviews';
 import type { LayoutServerLoad } from './$types';
 
@@ -18,6 +19,7 @@ export const load: LayoutServerLoad = (event) =>
 				href: `/models/${model}`,
 				overdue: due.overdue
 			})),
+			seesPeople: may(ctx, ctx.read, actor, 'people.read'),
 			folio: size - 1,
 			at
 		};

@@ -9,7 +9,7 @@ import { registerModel } from '../register/model';
 import { assignValidator } from '../register/parties';
 import { declareSigns } from '../register/signs';
 import { confirmTier, tierOfModel } from '../register/tier';
-import { draftVersion, submitVersion } from '../register/version';
+import { draftVersion, reviseDraft, submitVersion } from '../register/version';
 import { settled } from '../runs/execution';
 import { requestRun } from '../runs/request';
 import { resultOf } from '../runs/run-view';
@@ -133,14 +133,12 @@ export const tell = async (teller: Teller, model: DemoModel): Promise<Told> => {
 	);
 	const { vintage, to } = await store(teller, { model, ref, from });
 	const specification = specificationOf(model, from, to);
-	const draft = draftVersion(ctx, owner, { model: ref, specification });
-	const claimed = await claims(teller, model, draft, vintage);
+	const version = draftVersion(ctx, owner, { model: ref, specification });
+	const claimed = await claims(teller, model, version, vintage);
 	stage.pass(2);
-	const version = draftVersion(ctx, owner, {
-		model: ref,
+	reviseDraft(ctx, owner, version, {
 		specification: { ...specification, claimed },
-		reason: 'The coefficients in use, as the production script prints them.',
-		predecessor: draft
+		reason: 'The coefficients in use, as the production script prints them.'
 	});
 	submitVersion(ctx, owner, version);
 	await run(teller, owner, { version, vintage, purpose: 'planned' });
