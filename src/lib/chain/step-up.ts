@@ -1,5 +1,4 @@
 import { timingSafeEqual, verify } from 'node:crypto';
-import type { StepUp } from '$lib/domain/entry';
 import { strictBase64url } from './base64url';
 import { canonical, parseCanonical } from './canonical';
 import { readClientData } from './client-data';
@@ -21,6 +20,14 @@ export interface Statement {
 	readonly register: string;
 	readonly subject: string;
 	readonly v: 1;
+}
+
+/** A statement and the assertion over it, as an entry keeps them; bytes in base64url. */
+export interface SignedStatement {
+	readonly statement: string;
+	readonly authenticatorData: string;
+	readonly clientDataJSON: string;
+	readonly signature: string;
 }
 
 /** A signature that does not stand, and why. */
@@ -140,7 +147,7 @@ const checkAuthenticatorData = (bytes: Buffer, rpId: string): void => {
  * @param enrolled COSE_Key in base64url, as `credential.enrolled` holds it
  * @throws BadStepUp, BadKey
  */
-export const verifyStepUp = (stepUp: StepUp, enrolled: string, origin: string): Statement => {
+export const verifyStepUp = (stepUp: SignedStatement, enrolled: string, origin: string): Statement => {
 	const statement = readStatement(stepUp.statement);
 	const clientData = decoded('clientDataJSON', stepUp.clientDataJSON);
 	const authenticatorData = decoded('authenticatorData', stepUp.authenticatorData);

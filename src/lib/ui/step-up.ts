@@ -51,11 +51,20 @@ export const signWithPasskey = (optionsJSON: PublicKeyCredentialRequestOptionsJS
 export const makePasskey = (optionsJSON: PublicKeyCredentialCreationOptionsJSON): Promise<Ceremony> =>
 	attempt(() => startRegistration({ optionsJSON }));
 
+/** What the server found wrong with what was typed, by JSON pointer. */
+export interface TypedIssue {
+	readonly pointer: string;
+	readonly message: string;
+}
+
 /** Asks the server for the options of a ceremony; the answer, or words to show. */
 export const askFor = async <Options>(
 	path: string,
 	body: Readonly<Record<string, string>> = {}
-): Promise<{ readonly options: Options } | { readonly wrong: string }> => {
+): Promise<
+	| { readonly options: Options }
+	| { readonly wrong: string; readonly issues?: readonly TypedIssue[] | undefined }
+> => {
 	try {
 		const answer = await fetch(path, {
 			method: 'POST',

@@ -1,4 +1,5 @@
 import { fail, json, type ActionFailure, type RequestEvent } from '@sveltejs/kit';
+import { Invalid } from '$lib/domain/faults';
 import { doorCookie, sessionCookie } from '$lib/server/auth/cookies';
 import { AuthFault } from '$lib/server/auth/fault';
 import { limitsOf, network, TooMany } from '$lib/server/auth/limits';
@@ -73,6 +74,8 @@ export const optionsAtDoor = async (
 		return json(await work(visitor));
 	} catch (fault) {
 		if (fault instanceof AuthFault) return json({ message: sentence }, { status: 401 });
+		if (fault instanceof Invalid)
+			return json({ message: fault.message, issues: fault.issues }, { status: 400 });
 		if (!(fault instanceof TooMany)) throw fault;
 		tooMany(event, fault);
 		return json({ message: fault.message }, { status: 429 });

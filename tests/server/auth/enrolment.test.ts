@@ -23,7 +23,12 @@ beforeEach(async () => {
 });
 afterEach(() => register.close());
 
-const options = () => optionsForLink(register.ctx, visitor(), secret, 'Marta Quill');
+const typed = () => ({
+	secret,
+	password,
+	identity: { name: 'Marta Quill', mail: 'marta@bank.example', staffNumber: '1' }
+});
+const options = () => optionsForLink(register.ctx, visitor(), typed());
 
 const answer = async (bent: Bent, kind: Kind = 'ES256'): Promise<string> => {
 	const { challenge, user } = await options();
@@ -235,13 +240,12 @@ describe('a link', () => {
 		await enrol(register.ctx, visitor(), await sent());
 	});
 	test('that is guessed is limited an address', async () => {
-		const guess = (n: number) => optionsForLink(register.ctx, visitor(), `guess ${n}`, '');
+		const guess = (n: number) =>
+			optionsForLink(register.ctx, visitor(), { ...typed(), secret: `guess ${n}` });
 		for (let n = 0; n < 10; n++) await expect(guess(n)).rejects.toThrow(AuthFault);
 		await expect(guess(10)).rejects.toThrow(/Too many tries/);
 		await expect(options()).rejects.toThrow(/Too many tries/);
-		expect(
-			await optionsForLink(register.ctx, visitor({ address: '198.51.100.9' }), secret, '')
-		).toBeDefined();
+		expect(await optionsForLink(register.ctx, visitor({ address: '198.51.100.9' }), typed())).toBeDefined();
 	});
 	test('stores only a digest', () => {
 		const rows = register.ctx.read.all(register.ctx.read.q.selectFrom('enrolment_link').selectAll());

@@ -283,7 +283,10 @@ test('two admins start a recovery: a link of 30 minutes that replaces all that w
 		proposal
 	});
 	const secret = outcome.url.split('#')[1]!;
-	const { challenge: fresh, user } = await optionsForLink(register.ctx, visitor(), secret, '');
+	const { challenge: fresh, user } = await optionsForLink(register.ctx, visitor(), {
+		secret,
+		password: 'nine terns under the lighthouse lamp'
+	});
 	const device = new Authenticator('localhost');
 	const response = device.create({ challenge: fresh, origin, userHandle: user.id });
 	await enrol(register.ctx, visitor(), {
@@ -294,5 +297,7 @@ test('two admins start a recovery: a link of 30 minutes that replaces all that w
 	expect(await signIn(register, marta.device)).toBeUndefined();
 	expect(await signIn(register, device)).toBeDefined();
 	register.clock.forward(30 * 60_000);
-	await expect(optionsForLink(register.ctx, visitor(), secret, '')).rejects.toThrow();
+	await expect(
+		optionsForLink(register.ctx, visitor(), { secret, password: 'nine terns under the lighthouse lamp' })
+	).rejects.toThrow();
 });

@@ -44,33 +44,12 @@ export const lookAtLink = async (ctx: Ctx, visitor: Visitor, secret: string): Pr
 	}
 };
 
-/** What the browser needs to make the passkey of a link. @throws AuthFault, TooMany */
-export const optionsForLink = async (
-	ctx: Ctx,
-	visitor: Visitor,
-	secret: string,
-	typedName: string
-): Promise<PublicKeyCredentialCreationOptionsJSON> => {
-	const { person, name } = await lookAtLink(ctx, visitor, secret);
-	const { handle, mail } = directoryOf(ctx.read, person)!;
-	const shown = name || typedName.trim().slice(0, 120) || 'Administrator';
-	return enrolOptions(ctx, visitor.holder, { person, handle, name: mail || shown, displayName: shown });
-};
-
-/** What a person posts to enrol. */
-export interface Enrolling {
+/** What is typed to enrol. */
+export interface Typed {
 	readonly secret: string;
 	readonly password: string;
-	/** The browser's answer, as JSON. */
-	readonly response: string;
 	/** For the first admins. */
 	readonly identity?: Identity;
-}
-
-/** Shown once: neither is stored in a form that could be shown again. */
-export interface Enrolled {
-	readonly token: string;
-	readonly codes: readonly string[];
 }
 
 /** Passwords of people are checked against all that names them. */
@@ -79,6 +58,54 @@ const about = (ctx: Ctx, { name, mail }: { name: string; mail: string }): string
 	mail.split('@')[0] ?? '',
 	ctx.config.institution
 ];
+
+/** Looks at the link and at what was typed. @throws Invalid, AuthFault, TooMany */
+const checked = async (
+	ctx: Ctx,
+	visitor: Visitor,
+	typed: Typed
+): Promise<{ readonly opened: Opened; readonly identity?: Identity }> => {
+	const opened = await lookAtLink(ctx, visitor, typed.secret);
+	const identity = opened.needsIdentity
+		? checkIdentity(typed.identity ?? { name: '', mail: '', staffNumber: '' })
+		: undefined;
+	checkPassword(typed.password, about(ctx, identity ?? directoryOf(ctx.read, opened.person)!));
+	return { opened, ...(identity ? { identity } : {}) };
+};
+
+/**
+ * What the browser needs to make the passkey of a link. What was typed is checked first: a passkey made for a form that
+ * is then refused would stay on the device and open nothing.
+ * @throws Invalid, AuthFault, TooMany
+ */
+export const optionsForLink = async (
+	ctx: Ctx,
+	visitor: Visitor,
+	typed: Typed
+): Promise<PublicKeyCredentialCreationOptionsJSON> => {
+	const { opened, identity } = await checked(ctx, visitor, typed);
+	const { handle, mail, name } = directoryOf(ctx.read, opened.person)!;
+	const shown = identity?.name ?? name;
+	const account = identity?.mail ?? (mail || shown);
+	return enrolOptions(ctx, visitor.holder, {
+		person: opened.person,
+		handle,
+		name: account,
+		displayName: shown
+	});
+};
+
+/** What a person posts to enrol. */
+export interface Enrolling extends Typed {
+	/** The browser's answer, as JSON. */
+	readonly response: string;
+}
+
+/** Shown once: neither is stored in a form that could be shown again. */
+export interface Enrolled {
+	readonly token: string;
+	readonly codes: readonly string[];
+}
 
 /** Stores a password and enters that there is one. */
 const setPassword = (ctx: Ctx, tx: Tx, actor: Actor, person: PersonId, hash: string): void => {
@@ -153,11 +180,7 @@ const enterAll = (
  * @throws Invalid for password or identity; AuthFault for link or passkey; TooMany
  */
 export const enrol = async (ctx: Ctx, visitor: Visitor, sent: Enrolling): Promise<Enrolled> => {
-	const opened = await lookAtLink(ctx, visitor, sent.secret);
-	const identity = opened.needsIdentity
-		? checkIdentity(sent.identity ?? { name: '', mail: '', staffNumber: '' })
-		: undefined;
-	checkPassword(sent.password, about(ctx, identity ?? directoryOf(ctx.read, opened.person)!));
+	const { opened, identity } = await checked(ctx, visitor, sent);
 	const passkey = await verifyNewPasskey(ctx, sent.response, visitor.holder, opened.person);
 	const hash = await hashPassword(sent.password);
 	const link = { secret: sent.secret, ...(identity ? { identity } : {}) };
