@@ -56,7 +56,7 @@ for (let k = log.frontier().size; ; k++) {
 		});
 		if (k % 3 > 0) return [first.seq];
 		const document = blobs.put(tx, Buffer.alloc(1 + ((k * 977) % 60_000), k));
-		const policy = { policy: document, release: 'r', document, reasons: [] };
+		const policy = { policy: document, release: 'r', document, changed: [] };
 		const second = record(ctx, tx, by, grant, {
 			type: 'policy.proposed',
 			subjects: ['policy'],

@@ -14,6 +14,8 @@ const codePoint = (text: string, at: number): string =>
  * well-formed UTF-16, Unicode form NFC, no control characters; in names no direction marks either.
  */
 export const textFault = (text: string, kind: TextKind): string | undefined => {
+	// Most texts: nothing to look for in printable ASCII.
+	if (/^[ -~]*$/.test(text)) return undefined;
 	const control = text.search(controls[kind]);
 	if (control >= 0)
 		return `holds the control character ${codePoint(text, control)} at position ${control + 1}`;

@@ -67,7 +67,7 @@ export const history = (register: TestRegister): void => {
 			policy: document,
 			release: 'test',
 			document,
-			reasons: []
+			changed: []
 		});
 	});
 	enter(register, 'tier.confirmed', ['M-002'], { model: 'M-002', tier: 2, proposed: 2 });

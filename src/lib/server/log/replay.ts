@@ -1,4 +1,5 @@
 import { emptyFrontier, type Frontier } from '$lib/chain/merkle';
+import type { Entry } from '$lib/domain/entry';
 import type Sqlite from 'better-sqlite3';
 import type { Projectors } from '../context';
 import { raiseGates } from '../db/gates';
@@ -47,9 +48,10 @@ export const entryTexts = function* (from: Handle, size = Infinity): Generator<s
 const step = (tx: Tx, frontier: Frontier, text: string, projectors: Projectors): Frontier => {
 	const { size } = frontier;
 	try {
-		const { type, v } = JSON.parse(text) as { type: string; v: number };
+		const entry = JSON.parse(text) as Entry;
+		const { type, v } = entry;
 		if (!payloadSchema(type, v)) throw new ReplayStopped(size, `unknown event ${type} version ${v}`);
-		return appendText(tx, frontier, text, projectors)[1];
+		return appendText(tx, frontier, text, entry, projectors);
 	} catch (cause) {
 		if (cause instanceof ReplayStopped) throw cause;
 		throw new ReplayStopped(size, cause instanceof Error ? cause.message : String(cause), { cause });

@@ -8,7 +8,7 @@ import type { Projectors } from '../context';
 import { handle, type Handle, type Tx } from '../db/handle';
 import { appendText } from './append';
 import type { Draft } from './log';
-import { hashAt, lastEntry, lastOfSubject, logHead } from './log.queries';
+import { hashAt, logHead } from './log.queries';
 
 /** How far the clock may stand before the last entry and still be bent to it, in milliseconds. */
 const bendable = 120_000;
@@ -43,11 +43,21 @@ const timeOf = (now: Date, last: string | undefined): Pick<Entry, 'at' | 'clock'
 	return { at: last, clock: { raw, reason: 'behind' } };
 };
 
-const counted = (tx: Tx, refs: readonly string[]): Subject[] =>
-	[...new Set(refs)].sort().map((ref) => {
-		const last = tx.first<{ n: number; seq: number }>(lastOfSubject(tx.q, ref));
-		return last ? { n: last.n + 1, prev: last.seq, ref } : { n: 1, prev: null, ref };
-	});
+/** What every append asks, prepared once: building these statements anew would cost more than running them. */
+const openReadings = (sqlite: Sqlite.Database) => {
+	const last = sqlite.prepare<[], { at: string }>('select at from entry order by seq desc limit 1');
+	const lastOf = sqlite.prepare<[string], { n: number; seq: number }>(
+		'select n, seq from entry_subject where ref = ? order by n desc limit 1'
+	);
+	return {
+		lastAt: (): string | undefined => last.get()?.at,
+		counted: (refs: readonly string[]): Subject[] =>
+			[...new Set(refs)].sort().map((ref) => {
+				const before = lastOf.get(ref);
+				return before ? { n: before.n + 1, prev: before.seq, ref } : { n: 1, prev: null, ref };
+			})
+	};
+};
 
 /**
  * The one writer of a register.
@@ -60,6 +70,7 @@ export const openStore = (
 	settled: (types: readonly EventType[]) => void
 ): Store => {
 	const tx = handle(sqlite);
+	const readings = openReadings(sqlite);
 	const [begin, commit, rollback] = ['begin immediate', 'commit', 'rollback'].map((sql) =>
 		sqlite.prepare(sql)
 	);
@@ -92,12 +103,16 @@ export const openStore = (
 	const append = <T extends EventType>(within: Tx, { subjects, ...draft }: Draft<T>): Entry<T> => {
 		if (within !== tx || !pending) throw new Error('Entries are appended inside ctx.write only');
 		const seq = pending.size;
-		const last = tx.first<{ at: string }>(lastEntry(tx.q));
-		const text = textOf({ seq, ...timeOf(now(), last?.at), subjects: counted(tx, subjects), ...draft });
-		const [entry, moved] = appendText(tx, pending, text, projectors);
-		pending = moved;
+		const text = textOf({
+			seq,
+			...timeOf(now(), readings.lastAt()),
+			subjects: readings.counted(subjects),
+			...draft
+		});
+		const entry = JSON.parse(text) as Entry<T>;
+		pending = appendText(tx, pending, text, entry as Entry, projectors);
 		types.push(entry.type);
-		return entry as Entry<T>;
+		return entry;
 	};
 	return Object.freeze({ write, frontier: () => committed, append });
 };
