@@ -1,0 +1,53 @@
+/** The parameters of a check in words. */
+import type { Parameter } from '$lib/domain/run-result';
+import { figure } from './figures';
+
+const names: Readonly<Record<string, string>> = {
+	f: 'F',
+	fP: 'p of F',
+	lm: 'LM',
+	lmP: 'p of LM',
+	se: 's.e.',
+	df: 'degrees of freedom',
+	df1: 'numerator degrees of freedom',
+	df2: 'denominator degrees of freedom',
+	k: 'coefficients',
+	boundI0: 'bound, all I(0)',
+	boundI1: 'bound, all I(1)',
+	pIfI0: 'p, all I(0)',
+	pIfI1: 'p, all I(1)',
+	effectiveRows: 'rows the critical value is for',
+	recursiveResiduals: 'recursive residuals',
+	crossesAt5: 'crosses its 5 % boundary',
+	breakFrom: 'largest for a break from',
+	coefficientOnGap: 'coefficient on the gap',
+	conditionOfEquation: 'condition number of the equation',
+	vifLimit: 'limit of variance inflation',
+	atLeastOne: 'chance of at least one'
+};
+
+const deterministic: Readonly<Record<string, string>> = {
+	n: 'none',
+	c: 'constant',
+	ct: 'constant and trend'
+};
+
+/** `tableVariables` is `table variables`. */
+const nameOf = (key: string): string =>
+	names[key] ?? key.replace(/[A-Z]/g, (letter) => ` ${letter.toLowerCase()}`);
+
+const numberWords = (value: number): string => (Number.isInteger(value) ? figure(value, 0) : figure(value));
+
+function valueWords(key: string, value: Parameter): string {
+	if (typeof value === 'number') return numberWords(value);
+	if (typeof value === 'boolean') return value ? 'yes' : 'no';
+	if (typeof value === 'string') return /deterministic$/i.test(key) ? (deterministic[value] ?? value) : value;
+	return value.map((each) => (typeof each === 'number' ? numberWords(each) : each)).join(', ');
+}
+
+/** `lags 2`, `rule AIC`: every parameter, in the order of the result. */
+export function parameterWords(
+	parameters: Readonly<Record<string, Parameter>> | undefined
+): readonly string[] {
+	return Object.entries(parameters ?? {}).map(([key, value]) => `${nameOf(key)} ${valueWords(key, value)}`);
+}

@@ -1,0 +1,30 @@
+/** Lines of the policy a run was judged by, as the report cites them. */
+import type { PolicyLine } from '$lib/domain/policy';
+import { MINUS } from '../format';
+import { figure } from './figures';
+
+export interface PolicyLineView {
+	readonly value: string;
+	readonly says: string;
+}
+
+/** The address of a policy line: its path is its id on the page of the policy. */
+export const policyLineHref = (path: string): string => `/policy#${path}`;
+
+const one = (value: number | string): string =>
+	typeof value === 'string'
+		? value
+		: Number.isInteger(value)
+			? figure(value, 0)
+			: String(value).replace('-', MINUS);
+
+/** The value of a policy line: thresholds are written with the digits they have. */
+export function valueWords(value: PolicyLine['value']): string {
+	if (typeof value === 'boolean') return value ? 'yes' : 'no';
+	return (Array.isArray(value) ? value : [value]).map((each: number | string) => one(each)).join(', ');
+}
+
+export const policyLineView = ({ value, unit, says }: PolicyLine): PolicyLineView => ({
+	value: unit === undefined ? valueWords(value) : `${valueWords(value)} ${unit}`,
+	says
+});
