@@ -7,7 +7,7 @@ export const up = async (db: Kysely<unknown>): Promise<void> => {
 		digest text not null check (digest glob 'sha256:*' and length(digest) = 71),
 		release text not null,
 		document text,
-		reasons text not null check (json_valid(reasons)),
+		changed text not null check (json_valid(changed)),
 		at text not null,
 		by text not null,
 		state text not null check (state in ('open', 'adopted', 'superseded')),

@@ -23,7 +23,7 @@ describe('digest of a result', () => {
 
 	test.each([
 		['seed', { ...base, seed: 1 }],
-		['purpose', { ...base, purpose: 'validation' as const }],
+		['purpose', { ...base, purpose: 'validation' }],
 		['tier', { ...base, tier: 3 }],
 		['vintage', { ...base, vintage: `sha256:${'1'.repeat(64)}` }],
 		['engine', { ...base, engine: '0.0.0' }],
@@ -40,7 +40,9 @@ describe('digest of a result', () => {
 				}
 			})
 		]
-	] as const)('changes with %s', (_, request) => expect(digest(request)).not.toBe(first));
+	] satisfies [string, RunRequest][])('changes with %s', (_, request) =>
+		expect(digest(request)).not.toBe(first)
+	);
 
 	test('changes with one figure of the data, not with what lies below ten digits', () => {
 		const moved = (by: number) => ({

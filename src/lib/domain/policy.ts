@@ -80,14 +80,31 @@ export type PolicyTier = Policy['tiers'][number];
 export const linePath = (check: string, name: string): string => `checks/${check}/${name}`;
 export const levelPath = (name: string): string => `levels/${name}`;
 
+/** One line with its place in the policy. */
+export interface PlacedLine {
+	readonly path: string;
+	readonly line: PolicyLine;
+}
+
+const placed = (prefix: string, record: Readonly<Record<string, PolicyLine>>): PlacedLine[] =>
+	Object.entries(record).map(([name, line]) => ({ path: `${prefix}/${name}`, line }));
+
+/** Every line of a policy that holds a value, in the order of the file. */
+export const policyLines = (policy: Policy): readonly PlacedLine[] => [
+	...policy.tiers.flatMap(({ tier, from, review, revalidation }) =>
+		placed(`tiers/${tier}`, { from, review, revalidation })
+	),
+	...placed('levels', policy.levels),
+	...Object.entries(policy.checks).flatMap(([check, { lines }]) => placed(`checks/${check}`, lines)),
+	...policy.severities.map(({ severity, due }) => ({ path: `severities/${severity}/due`, line: due })),
+	{ path: 'reminders', line: policy.reminders },
+	{ path: 'lookBack', line: policy.lookBack },
+	{ path: 'quorum', line: policy.quorum }
+];
+
 /** The line at a path; undefined where there is none. */
-export const policyLine = (policy: Policy, path: string): PolicyLine | undefined => {
-	const [section, first, second] = path.split('/');
-	if (section === 'levels' && first !== undefined) return policy.levels[first];
-	if (section === 'checks' && first !== undefined && second !== undefined)
-		return policy.checks[first]?.lines[second];
-	return undefined;
-};
+export const policyLine = (policy: Policy, path: string): PolicyLine | undefined =>
+	policyLines(policy).find((each) => each.path === path)?.line;
 
 /** The tier proposed for two scores: the strictest whose threshold their product reaches. */
 export const proposedTier = (policy: Policy, materiality: number, complexity: number): PolicyTier => {

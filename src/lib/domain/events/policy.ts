@@ -2,19 +2,17 @@ import { z } from 'zod';
 import { blobDigest, digest } from './digest';
 import { event } from './event';
 
-/** A bank's own reason for a line it keeps or changes; the changed values stand in the document. */
-const ownReason = z.strictObject({ line: z.string(), changed: z.boolean(), reason: z.string() });
-
 /** Events of the policy room. */
 export const policyEvents = {
 	'policy.proposed': event(1, {
 		1: z.strictObject({
-			/** Digest of the policy: of the released file, or of the canonical document where lines were changed. */
+			/** Digest of the policy: of the canonical document with the bank's own values and reasons. */
 			policy: digest(),
 			release: z.string(),
-			/** Blob of the canonical document, where lines were changed. */
+			/** Blob of that document. */
 			document: blobDigest().optional(),
-			reasons: z.array(ownReason)
+			/** Paths of the lines whose value differs from the release; reasons stand in the document. */
+			changed: z.array(z.string())
 		})
 	}),
 	'policy.adopted': event(1, {

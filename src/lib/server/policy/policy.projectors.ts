@@ -8,13 +8,13 @@ export const policyProjectors: Projectors = {
 		// One proposal waits at a time: the later one replaces the earlier.
 		if (open)
 			tx.update('policy_proposal', { proposal: open.proposal }, { state: 'superseded', entry: entry.seq });
-		const { policy, release, document, reasons } = entry.payload;
+		const { policy, release, document, changed } = entry.payload;
 		tx.insert('policy_proposal', {
 			proposal: entry.seq,
 			digest: policy,
 			release,
 			document: document ?? null,
-			reasons: JSON.stringify(reasons),
+			changed: JSON.stringify(changed),
 			at: entry.at,
 			by: entry.actor,
 			state: 'open',

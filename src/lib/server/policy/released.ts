@@ -3,7 +3,7 @@ import type { Policy } from '$lib/domain/policy';
 
 // The files are built into the program, so that nothing beside it can replace them.
 const files = import.meta.glob<string>('/policies/*.yaml', { query: '?raw', import: 'default', eager: true });
-const locks = import.meta.glob<string>('/policies/LOCK', { query: '?raw', import: 'default', eager: true });
+const locks = import.meta.glob<string>('/policies/LOCK*', { query: '?raw', import: 'default', eager: true });
 
 const readReleases = (): readonly PolicyRelease[] => {
 	const lock = parseLock(locks['/policies/LOCK'] ?? '');

@@ -19,8 +19,8 @@ export interface PolicySchema {
 		digest: string;
 		release: string;
 		document: string | null;
-		/** JSON array of {line, changed, reason}. */
-		reasons: string;
+		/** JSON array of the paths whose value differs from the release. */
+		changed: string;
 		at: string;
 		by: string;
 		state: 'open' | 'adopted' | 'superseded';
