@@ -71,10 +71,12 @@ export const askFor = async <Options>(
 			headers: { 'content-type': 'application/json', accept: 'application/json' },
 			body: JSON.stringify(body)
 		});
-		const said = (await answer.json()) as Options & { readonly message?: string };
-		return answer.ok
-			? { options: said }
-			: { wrong: said.message ?? 'The server refused. Open the page again.' };
+		const said = (await answer.json()) as Options & {
+			readonly message?: string;
+			readonly issues?: readonly TypedIssue[];
+		};
+		if (answer.ok) return { options: said };
+		return { wrong: said.message ?? 'The server refused. Open the page again.', issues: said.issues };
 	} catch {
 		return { wrong: 'The server did not answer. Try again.' };
 	}

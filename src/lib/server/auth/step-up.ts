@@ -16,6 +16,7 @@ import { seatKeyOf } from './auth.queries';
 import { issueChallenge, takeChallenge } from './challenge';
 import { noteUse } from './credentials';
 import { AuthFault } from './fault';
+import { limitsOf, TooMany } from './limits';
 import { stepUpOptions } from './options';
 import { signAsSeat } from './seat-key';
 
@@ -143,11 +144,14 @@ export interface StepUpAnswer {
  */
 export const takeStepUp = async (ctx: Ctx, actor: Actor, answer: StepUpAnswer): Promise<Signed> => {
 	const person = personOf(actor, 'step-up');
+	const limits = limitsOf(ctx);
 	try {
+		await limits.check('step-ups a person', person);
 		if (actor.means === 'seat') return bySeat(ctx, actor, person, answer.challenge);
 		return await byPasskey(ctx, actor, actor.session!, answer.response);
 	} catch (fault) {
-		if (!(fault instanceof AuthFault)) throw fault;
+		if (!(fault instanceof AuthFault || fault instanceof TooMany)) throw fault;
+		await limits.count('step-ups a person', person);
 		throw new Refused(
 			'step-up',
 			'step-up',

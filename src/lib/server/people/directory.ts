@@ -39,10 +39,15 @@ export const checkIdentity = (typed: Identity): Identity => {
 		staffNumber: clean(typed.staffNumber)
 	};
 	const issues: Issue[] = [];
+	const wanted: Readonly<Record<string, string>> = {
+		name: 'a name',
+		mail: 'a mail address',
+		staffNumber: 'a staff number'
+	};
 	for (const [field, text] of Object.entries(identity)) {
 		const fault = textFault(text, 'name');
 		if (fault) issues.push({ pointer: `/${field}`, message: `This ${fault}.` });
-		else if (text === '') issues.push({ pointer: `/${field}`, message: 'This is needed.' });
+		else if (text === '') issues.push({ pointer: `/${field}`, message: `Write ${wanted[field]}.` });
 		else if (text.length > 120) issues.push({ pointer: `/${field}`, message: 'At most 120 characters.' });
 	}
 	if (identity.mail !== '' && !mailForm.test(identity.mail))
