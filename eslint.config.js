@@ -19,6 +19,8 @@ export default defineConfig(
 		rules: {
 			// There is no base path, and addresses arrive as props.
 			'svelte/no-navigation-without-resolve': 'off',
+			// It takes the reason behind the dash for more codes; svelte-check judges the warnings themselves.
+			'svelte/no-unused-svelte-ignore': 'off',
 			// TypeScript resolves names itself.
 			'no-undef': 'off',
 			// Typed arrays are indexed in inner loops where bounds are proved by the loop itself.

@@ -4,5 +4,4 @@ export type Clock = () => Date;
 const place = Symbol.for('keelbook.clock');
 
 /** The one clock of the process. */
-export const clock = (): Clock =>
-	(globalThis as { [place]?: Clock })[place] ?? ((): Date => new Date());
+export const clock = (): Clock => (globalThis as { [place]?: Clock })[place] ?? ((): Date => new Date());

@@ -67,7 +67,10 @@ export const readConfig = (env: Readonly<Record<string, string | undefined>>): C
 	if (logKeyFile.startsWith(`${data}/`))
 		throw wrong('KEELBOOK_LOG_KEY_FILE must lie outside the data folder, or a backup would carry the key.');
 	if (existsSync(data) === false && existsSync(logKeyFile))
-		throw new StartFault(66, `The register in ${data} is missing, but its log key exists; restore the register.`);
+		throw new StartFault(
+			66,
+			`The register in ${data} is missing, but its log key exists; restore the register.`
+		);
 	return Object.freeze({
 		data,
 		origin,
