@@ -19,7 +19,7 @@ export const lossFile = (seed = 11): string => {
 		const gap = loss - 0.9 - 0.5 * unemp;
 		const step = 0.25 * drawNormal(next);
 		unemp += step;
-		loss += -0.3 * gap + 0.2 * step + 0.1 * drawNormal(next);
+		loss += -0.3 * gap + 0.2 * step + 0.03 * drawNormal(next);
 		return `${2000 + Math.floor(i / 4)}-Q${(i % 4) + 1},${loss.toFixed(4)},${unemp.toFixed(4)}`;
 	});
 	return `period,loss,unemp\n${rows.join('\n')}\n`;

@@ -1,7 +1,7 @@
 import { existsSync } from 'node:fs';
 import { availableParallelism } from 'node:os';
 import { fileURLToPath } from 'node:url';
-import { MessageChannel } from 'node:worker_threads';
+import { MessageChannel, type MessagePort } from 'node:worker_threads';
 import { Piscina } from 'piscina';
 import type { parseUpload } from '$lib/server/lineage/parse';
 import type { Computed, ComputeTask, Progress } from './task';
@@ -32,7 +32,33 @@ export interface Pool {
 const built = import.meta.env.PROD;
 const filename = built
 	? fileURLToPath(new URL('worker.js', import.meta.url.replace(/server\/chunks\/.*$/, '')))
-	: fileURLToPath(new URL('./worker.ts', import.meta.url));
+	: fileURLToPath(new URL('./worker-from-source.js', import.meta.url));
+
+/** Tasks end with their own signal, and all of them when a thread cannot even start: they would wait for ever. */
+const watched = (piscina: Piscina) => {
+	const waiting = new Set<AbortController>();
+	piscina.on('error', (fault: unknown) => {
+		for (const controller of waiting) controller.abort(fault);
+	});
+	return async <T>(
+		task: object,
+		name: string,
+		transfer: readonly MessagePort[],
+		signal?: AbortSignal
+	): Promise<T> => {
+		const start = new AbortController();
+		waiting.add(start);
+		try {
+			const signals = AbortSignal.any([start.signal, ...(signal ? [signal] : [])]);
+			return (await piscina.run(task, { name, signal: signals, transferList: [...transfer] })) as T;
+		} catch (fault) {
+			if (!start.signal.aborted) throw fault;
+			throw new Error('A thread could not start.', { cause: start.signal.reason });
+		} finally {
+			waiting.delete(start);
+		}
+	};
+};
 
 /**
  * Opens the pool of threads; they start with the first task.
@@ -45,27 +71,21 @@ export const createPool = (threads: number = Math.max(2, availableParallelism() 
 		minThreads: 0,
 		maxThreads: threads,
 		idleTimeout: 60_000,
-		resourceLimits: { maxOldGenerationSizeMb: 1024 },
-		...(built ? {} : { execArgv: ['--import', 'tsx'] })
+		resourceLimits: { maxOldGenerationSizeMb: 1024 }
 	});
-	// Without a listener an error of a thread would end the server; its task is rejected anyway.
-	piscina.on('error', () => undefined);
+	const run = watched(piscina);
 	let closing = false;
 	return Object.freeze({
 		compute: async (task, { signal, progress } = {}) => {
 			const { port1, port2 } = new MessageChannel();
 			port1.on('message', (told: Progress) => progress?.(told));
 			try {
-				return (await piscina.run(
-					{ ...task, port: port2 },
-					{ name: 'compute', transferList: [port2], ...(signal && { signal }) }
-				)) as Computed;
+				return await run<Computed>({ ...task, port: port2 }, 'compute', [port2], signal);
 			} finally {
 				port1.close();
 			}
 		},
-		parse: (input, { signal } = {}) =>
-			piscina.run(input, { name: 'parse', ...(signal && { signal }) }) as Promise<ParseOutcome>,
+		parse: (input, { signal } = {}) => run<ParseOutcome>(input, 'parse', [], signal),
 		closed: () => closing,
 		close: async () => {
 			closing = true;
