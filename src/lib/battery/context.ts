@@ -4,6 +4,7 @@ import type { Reason, RunRequest, Verdict } from '$lib/domain/run';
 import type { Check, Estimates, Part, ReplicationRow } from '$lib/domain/run-result';
 import type { Specification } from '$lib/domain/specification';
 import type { Model } from './model';
+import type { Opposite } from './opposite';
 import type { ModelSample } from './sample';
 import type { Settings } from './settings';
 import type { Levels } from './verdict';
@@ -22,6 +23,8 @@ export interface Context {
 	/** The model, or why there is none. */
 	readonly model: Model | Refusal;
 	readonly estimates: Estimates | null;
+	/** The test whose null is cointegration, where it can be made. */
+	readonly opposite: Opposite | undefined;
 	readonly replication: readonly ReplicationRow[];
 	/** A check that ran before, by id. */
 	readonly done: (id: string) => Check | undefined;

@@ -31,7 +31,7 @@ export const parseLock = (text: string): ReadonlyMap<string, string> =>
 	);
 
 /** Lines the battery itself cannot do without. */
-const neededLevels = ['query', 'fails', 'shown', 'interval'];
+const neededLevels = ['query', 'fails', 'shown', 'against', 'interval'];
 
 const incomplete = (policy: Policy): string | undefined => {
 	const level = neededLevels.find((name) => !Object.hasOwn(policy.levels, name));

@@ -16,6 +16,7 @@ import { familyOf } from './family';
 import { groupsOf } from './groups';
 import { modelOf } from './model';
 import { modelSeriesOf, seriesUsed } from './model-series';
+import { oppositeOf } from './opposite';
 import { familyId, registry } from './registry';
 import { replicationRows } from './replication';
 import { sampleOf } from './sample';
@@ -61,6 +62,7 @@ const prepare = (request: RunRequest, policy: Policy, data: Data, settings: Sett
 		sample,
 		model,
 		estimates,
+		opposite: isRefusal(sample) ? undefined : oppositeOf(spec, sample, settings),
 		replication: replicationRows(spec, estimates, replicationTolerance({ settings })),
 		done: (id) => done.get(id),
 		keep: (check) => done.set(check.id, check)

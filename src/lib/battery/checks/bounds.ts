@@ -6,7 +6,7 @@ import { linePath } from '$lib/domain/policy';
 import type { Part } from '$lib/domain/run-result';
 import { checkOf, notAssessable, onModel, refusedCheck, tooFew, type Context } from '../context';
 import { sources } from '../sources';
-import { doesNotCorrect } from '../verdict';
+import { doesNotCorrect, goodRejection } from '../verdict';
 import { freeLevelsOf } from './ecm-t';
 
 const id = 'cointegration.bounds';
@@ -75,7 +75,7 @@ export const cointegrationBounds = onModel(id, sources[id]!, (context, model) =>
 	const parts = partsOf(context, test, level);
 	const common = {
 		...rest,
-		levels: ['shown'],
+		levels: ['shown', 'against'],
 		statistic: { name: 'F', value: test.F },
 		parameters: {
 			case: test.case,
@@ -96,12 +96,18 @@ export const cointegrationBounds = onModel(id, sources[id]!, (context, model) =>
 			common
 		);
 	const inconclusive = parts.some(({ parameters }) => parameters?.['reading'] === 'inconclusive');
-	const refuted = doesNotCorrect(fit.adjustment.lambda);
+	const judgement = goodRejection(
+		{
+			passes: parts.every(({ verdict }) => verdict === 'holds'),
+			refuted: doesNotCorrect(fit.adjustment.lambda),
+			opposed: context.opposite?.rejects ?? false
+		},
+		context.levels.shown
+	)!;
 	return checkOf(id, {
 		...common,
+		...judgement,
 		parts,
-		rejected: parts.every(({ verdict }) => verdict === 'holds'),
-		verdict: refuted ? 'fails' : parts.every(({ verdict }) => verdict === 'holds') ? 'holds' : 'query',
-		because: refuted ? ['does-not-correct'] : inconclusive ? ['between-bounds'] : []
+		because: [...judgement.because, ...(inconclusive && !judgement.rejected ? ['between-bounds'] : [])]
 	});
 });

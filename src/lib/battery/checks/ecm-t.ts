@@ -93,7 +93,8 @@ const judged = (context: Context, fit: ErrorCorrectionFit, stat: number, evidenc
 		{
 			passes: critical === undefined ? undefined : stat < critical,
 			...(p !== undefined && { p: { value: p, asymptotic: false } }),
-			refuted: doesNotCorrect(fit.adjustment.lambda)
+			refuted: doesNotCorrect(fit.adjustment.lambda),
+			opposed: context.opposite?.rejects ?? false
 		},
 		level
 	);
@@ -109,11 +110,12 @@ const judged = (context: Context, fit: ErrorCorrectionFit, stat: number, evidenc
 		},
 		...(p !== undefined && { pValue: p }),
 		criticalValues: criticalValuesOf(evidence),
+		...(context.opposite && { parts: [context.opposite.part] }),
 		n: fit.fit.nobs,
 		nullHypothesis: 'no-adjustment',
 		source: sources[id]!,
 		lines: ['least', 'bootstrap-below', ...(drawn ? ['draws'] : [])],
-		levels: ['shown']
+		levels: ['shown', 'against']
 	};
 	if (!judgement)
 		return refusedCheck(id, isRefusal(table) ? table : refuse('table', 'No critical value exists.'), common);

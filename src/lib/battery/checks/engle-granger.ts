@@ -86,7 +86,8 @@ const judged = (context: Context, test: EngleGranger, drawn: Bootstraps | Refusa
 		{
 			passes: critical === undefined ? undefined : test.stat < critical,
 			...(p && { p }),
-			refuted: !isRefusal(context.model) && doesNotCorrect(context.model.adjustment.lambda)
+			refuted: !isRefusal(context.model) && doesNotCorrect(context.model.adjustment.lambda),
+			opposed: context.opposite?.rejects ?? false
 		},
 		context.levels.shown
 	);
@@ -100,14 +101,17 @@ const judged = (context: Context, test: EngleGranger, drawn: Bootstraps | Refusa
 			...(chosen && { judgedBy: `bootstrap-${scheme}` })
 		},
 		...(p && { pValue: p.value }),
-		...(chosen && test.pvalue !== null && { parts: tableAnd(test, drawn as Bootstraps) }),
-		...(chosen && test.pvalue === null && { parts: bootstrapParts(drawn as Bootstraps) }),
+		parts: [
+			...(chosen && test.pvalue !== null ? [tablePart(test)] : []),
+			...(chosen ? bootstrapParts(drawn as Bootstraps) : []),
+			...(context.opposite ? [context.opposite.part] : [])
+		],
 		criticalValues: tabulated(test.critical),
 		n: test.nobs,
 		nullHypothesis: 'no-cointegration',
 		source: sources[id]!,
 		lines: ['least', 'rule', 'bootstrap-below', ...(chosen ? ['draws'] : [])],
-		levels: ['shown']
+		levels: ['shown', 'against']
 	};
 	return judgement
 		? checkOf(id, { ...common, ...judgement })
@@ -119,13 +123,11 @@ const bootstrapParts = ({ iid, wild }: Bootstraps): Part[] => [
 	bootstrapPart('wild', wild)
 ];
 
-const tableAnd = (test: EngleGranger, drawn: Bootstraps): Part[] => [
+const tablePart = (test: EngleGranger): Part =>
 	Object.freeze({
 		about: 'table',
 		statistic: { name: 'tau', value: test.stat },
 		pValue: test.pvalue!,
 		criticalValues: tabulated(test.critical),
 		n: test.nobs
-	}),
-	...bootstrapParts(drawn)
-];
+	});

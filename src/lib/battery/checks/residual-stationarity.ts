@@ -3,16 +3,18 @@ import {
 	type GapOrigin,
 	type ResidualStationarity
 } from '$lib/econometrics/cointegration/residual-stationarity';
+import { gapBoundary } from '$lib/econometrics/cointegration/gap-boundary';
 import { staticDeterministic } from '$lib/econometrics/error-correction/companions';
 import { longRunDummies, type Relation } from '$lib/econometrics/error-correction/equation';
 import { gapFrom } from '$lib/econometrics/error-correction/gap';
 import { staticRegression } from '$lib/econometrics/error-correction/static-regression';
 import { isRefusal, type Refusal } from '$lib/econometrics/refusal';
-import { periodIndex } from '$lib/domain/period';
+import { periodIndex, periodsPerYear } from '$lib/domain/period';
 import { linePath } from '$lib/domain/policy';
 import type { Check, Part } from '$lib/domain/run-result';
 import {
 	checkOf,
+	figure,
 	notAssessable,
 	onModel,
 	refusedCheck,
@@ -107,7 +109,12 @@ export const stationarityRefit: AnyCheck = (context) => {
 	const least = Math.max(context.settings.number(linePath(id, 'least')), 10 + 2 * test.lags + 5 * drivers);
 	const few = tooFew(sample.T, least, 'periods');
 	if (few) return refusedCheck(id, few, rest);
-	return judged(id, context, test, false, rest);
+	const { opposite } = context;
+	return judged(id, context, test, opposite?.rejects ?? false, {
+		...rest,
+		levels: ['shown', 'against'],
+		...(opposite && { parts: [opposite.part] })
+	});
 };
 
 interface Held {
@@ -153,47 +160,101 @@ const overlapPart = (context: Context, gap: Float64Array, drivers: number): Part
 const gapOf = ({ equation, sample }: ModelSample, relation: Relation): Float64Array =>
 	gapFrom(relation, equation, sample);
 
+/** What the new periods say: the test of the gap's KPSS and the boundary of its cumulated deviations. */
+interface Watch {
+	readonly parts: readonly Part[];
+	readonly crossedAt5: boolean;
+	readonly crossedAt1: boolean;
+}
+
+const nothingWatched: Watch = { parts: [], crossedAt5: false, crossedAt1: false };
+
+/** The cumulated gap after approval against a boundary that may be looked at every period. */
+const watched = (context: Context, gap: Float64Array, newFrom: number): Watch => {
+	const fresh = gap.length - newFrom;
+	if (newFrom === 0 || fresh < context.settings.number(linePath(held, 'least-boundary')))
+		return nothingWatched;
+	const scale = 2 * periodsPerYear[context.spec.frequency];
+	const found = gapBoundary(gap, { known: newFrom, scale, levels: [0.05, 0.01] });
+	if (isRefusal(found)) return { ...nothingWatched, parts: [refusedPart('boundary', found)] };
+	const [five, one] = found.lines;
+	return {
+		parts: [
+			Object.freeze({
+				about: 'boundary',
+				statistic: { name: 'B', value: figure(found.path.at(-1)) },
+				parameters: {
+					known: newFrom,
+					scale,
+					crossedAt5: five!.crossed !== null,
+					crossedAt1: one!.crossed !== null
+				},
+				criticalValues: [
+					{ level: '5%', value: five!.boundary.at(-1)! },
+					{ level: '1%', value: one!.boundary.at(-1)! }
+				],
+				n: fresh
+			})
+		],
+		crossedAt5: five!.crossed !== null,
+		crossedAt1: one!.crossed !== null
+	};
+};
+
+const kpssPart = ({ kpss }: ResidualStationarity): Part[] =>
+	kpss
+		? [
+				Object.freeze({
+					about: 'KPSS',
+					statistic: { name: 'eta', value: kpss.stat },
+					parameters: { lag: kpss.lag },
+					n: kpss.nobs
+				})
+			]
+		: [];
+
+const held = 'residual.stationarity-held';
+
+/** Fewer new periods than the test needs: only the boundary can speak. */
+const onlyWatched = (few: Refusal, watch: Watch, common: Omit<Finding, 'verdict'>): Check =>
+	watch.crossedAt5
+		? checkOf(held, {
+				...common,
+				verdict: watch.crossedAt1 ? 'fails' : 'query',
+				because: ['boundary-crossed']
+			})
+		: refusedCheck(held, few, common);
+
 /** Unit root in the gap of values held fixed, on the data after those they were estimated on. */
-export const stationarityHeld = onModel(
-	'residual.stationarity-held',
-	sources['residual.stationarity-held']!,
-	(context, model) => {
-		const id = 'residual.stationarity-held';
-		const rest = {
-			source: sources[id]!,
-			nullHypothesis: 'unit-root-in-gap',
-			lines: ['least-new', 'against'],
-			levels: ['shown']
-		};
-		const held = heldIn(context, model);
-		if (!held)
-			return notAssessable(
-				id,
-				'no-approved-version',
-				'There is no approved version whose values could be held.',
-				rest
-			);
-		const gap = gapOf(model.data, held.relation);
-		const drivers = held.relation.slopes.length;
-		const fresh = gap.slice(held.newFrom);
-		const parts = held.newFrom > 0 ? [overlapPart(context, gap, drivers)] : [];
-		const common = { ...rest, ...(parts.length > 0 && { parts }) };
-		const few = tooFew(fresh.length, context.settings.number(linePath(id, 'least-new')), 'new periods');
-		if (few) return refusedCheck(id, few, common);
-		const test = heldTest(context, fresh, drivers, false);
-		if (isRefusal(test)) return refusedCheck(id, test, common);
-		const strict = criticalAt(test.kpss?.critical ?? null, context.settings.number(linePath(id, 'against')));
-		const opposed = test.kpss !== null && strict !== undefined && test.kpss.stat > strict;
-		const kpss: Part[] = test.kpss
-			? [
-					Object.freeze({
-						about: 'KPSS',
-						statistic: { name: 'eta', value: test.kpss.stat },
-						parameters: { lag: test.kpss.lag },
-						n: test.kpss.nobs
-					})
-				]
-			: [];
-		return judged(id, context, test, opposed, { ...common, parts: [...parts, ...kpss] });
-	}
-);
+export const stationarityHeld = onModel(held, sources[held]!, (context, model) => {
+	const rest = {
+		source: sources[held]!,
+		nullHypothesis: 'unit-root-in-gap',
+		lines: ['least-new', 'least-boundary'],
+		levels: ['shown', 'against']
+	};
+	const values = heldIn(context, model);
+	if (!values)
+		return notAssessable(
+			held,
+			'no-approved-version',
+			'There is no approved version whose values could be held.',
+			rest
+		);
+	const gap = gapOf(model.data, values.relation);
+	const drivers = values.relation.slopes.length;
+	const fresh = gap.slice(values.newFrom);
+	const watch = watched(context, gap, values.newFrom);
+	const parts = [...(values.newFrom > 0 ? [overlapPart(context, gap, drivers)] : []), ...watch.parts];
+	const common = { ...rest, parts };
+	const few = tooFew(fresh.length, context.settings.number(linePath(held, 'least-new')), 'new periods');
+	if (few) return onlyWatched(few, watch, common);
+	const test = heldTest(context, fresh, drivers, false);
+	if (isRefusal(test)) return refusedCheck(held, test, common);
+	const strict = criticalAt(test.kpss?.critical ?? null, context.settings.number('levels/against'));
+	const opposed = test.kpss !== null && strict !== undefined && test.kpss.stat > strict;
+	const check = judged(held, context, test, opposed, { ...common, parts: [...parts, ...kpssPart(test)] });
+	return watch.crossedAt1
+		? Object.freeze({ ...check, verdict: 'fails', because: [...(check.because ?? []), 'boundary-crossed'] })
+		: check;
+});
