@@ -20,7 +20,6 @@ export const up = async (db: Kysely<unknown>): Promise<void> => {
 		seq integer not null references entry (seq),
 		primary key (ref, n)
 	) strict, without rowid`.execute(db);
-	await sql`create index entry_subject_by_seq on entry_subject (seq)`.execute(db);
 	await sql`create table node (
 		pos integer primary key check (pos >= 0),
 		hash blob not null check (length(hash) = 32)

@@ -1,11 +1,8 @@
-import { createHash } from 'node:crypto';
+import { hash } from 'node:crypto';
 
 /** SHA-256 (FIPS 180-4) of the concatenated parts. */
-export const sha256 = (...parts: readonly Uint8Array[]): Buffer => {
-	const hash = createHash('sha256');
-	for (const part of parts) hash.update(part);
-	return hash.digest();
-};
+export const sha256 = (...parts: readonly Uint8Array[]): Buffer =>
+	hash('sha256', parts.length === 1 ? parts[0]! : Buffer.concat(parts), 'buffer');
 
 /** The digest of bytes as entries write it: `sha256:` and 64 hexadecimal digits. */
 export const digestOf = (bytes: Uint8Array): string => `sha256:${sha256(bytes).toString('hex')}`;

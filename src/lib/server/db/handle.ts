@@ -56,6 +56,13 @@ export const handle = (sqlite: Sqlite.Database): Tx => {
 		if (!found) prepared.set(sql, (found = sqlite.prepare(sql)));
 		return found;
 	};
+	/** Statements of insert, update and remove by table and columns: the text is built once. */
+	const shaped = new Map<string, Sqlite.Statement>();
+	const ofShape = (shape: string, sql: () => string): Sqlite.Statement => {
+		let found = shaped.get(shape);
+		if (!found) shaped.set(shape, (found = sqlite.prepare(sql())));
+		return found;
+	};
 	const compile = (query: Compilable<unknown>): [Sqlite.Statement, readonly unknown[]] => {
 		const { sql, parameters } = query.compile();
 		return [statement(sql), parameters];
@@ -79,19 +86,28 @@ export const handle = (sqlite: Sqlite.Database): Tx => {
 		},
 		insert(table: string, row: object): void {
 			const columns = Object.keys(row);
-			const sql = `insert into ${quoted(table)} (${columns.map(quoted).join(', ')}) values (${columns.map(() => '?').join(', ')})`;
-			one(statement(sql).run(...Object.values(row)).changes, `Insert into ${table}`);
+			const insert = ofShape(
+				`+${table}:${columns.join()}`,
+				() =>
+					`insert into ${quoted(table)} (${columns.map(quoted).join(', ')}) values (${columns.map(() => '?').join(', ')})`
+			);
+			one(insert.run(...Object.values(row)).changes, `Insert into ${table}`);
 		},
 		update(table: string, key: object, set: object): void {
-			const sql = `update ${quoted(table)} set ${equals(Object.keys(set), ', ')} where ${equals(Object.keys(key), ' and ')}`;
-			one(
-				statement(sql).run(...Object.values(set), ...Object.values(key)).changes,
-				`Update of ${table}`
+			const [by, columns] = [Object.keys(key), Object.keys(set)];
+			const update = ofShape(
+				`=${table}:${columns.join()}:${by.join()}`,
+				() => `update ${quoted(table)} set ${equals(columns, ', ')} where ${equals(by, ' and ')}`
 			);
+			one(update.run(...Object.values(set), ...Object.values(key)).changes, `Update of ${table}`);
 		},
 		remove(table: string, key: object): number {
-			const sql = `delete from ${quoted(table)} where ${equals(Object.keys(key), ' and ')}`;
-			return statement(sql).run(...Object.values(key)).changes;
+			const by = Object.keys(key);
+			const remove = ofShape(
+				`-${table}:${by.join()}`,
+				() => `delete from ${quoted(table)} where ${equals(by, ' and ')}`
+			);
+			return remove.run(...Object.values(key)).changes;
 		}
 	});
 };

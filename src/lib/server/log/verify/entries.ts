@@ -41,19 +41,14 @@ const chainFault = ({ seq, subjects }: Envelope, { heads }: Running): string | u
 	return fault;
 };
 
-const checkSubjectRows = (entry: Envelope, source: Source, findings: Findings): void => {
-	const rows = source.subjects.all(entry.seq);
-	const said = entry.subjects.map(({ ref, n }) => `${ref} (${n})`);
-	const stored = new Set(rows.map(({ ref, n }) => `${ref} (${n})`));
-	const lost = said.find((subject) => !stored.has(subject));
-	if (lost) findings.fault('subject', `E-${entry.seq}`, `the row of its subject ${lost} is missing`);
-	const extra = [...stored].find((subject) => !said.includes(subject));
-	if (extra)
-		findings.fault(
-			'subject',
-			`E-${entry.seq}`,
-			`a row gives it the subject ${extra}, which its bytes do not`
-		);
+const checkSubjectRows = ({ seq, subjects }: Envelope, source: Source, findings: Findings): void => {
+	for (const { ref, n } of subjects) {
+		const stored = source.subject.get(ref, n);
+		if (stored === undefined)
+			findings.fault('subject', `E-${seq}`, `the row of its subject ${ref} (${n}) is missing`);
+		else if (stored !== seq)
+			findings.fault('subject', `E-${seq}`, `the row of its subject ${ref} (${n}) names E-${stored}`);
+	}
 };
 
 /** Judges one entry at a time, in order; `check` gives the parsed entry, or undefined when its bytes cannot be read. */
@@ -79,9 +74,17 @@ export const entryChecker = (source: Source, findings: Findings) => {
 			return undefined;
 		}
 	};
-	return {
-		check,
-		last: () => running.at,
-		subjects: () => [...running.heads.values()].reduce((sum, { n }) => sum + n, 0)
+	/** Rows of entry_subject beyond those of the entries: only when their number says that there are some. */
+	const end = (): void => {
+		const expected = [...running.heads.values()].reduce((sum, { n }) => sum + n, 0);
+		if (source.subjectCount() === expected) return;
+		for (const { ref, n, seq } of source.subjects())
+			if (n > (running.heads.get(ref)?.n ?? 0))
+				findings.fault(
+					'subject',
+					`E-${seq}`,
+					`a row gives it the subject ${ref} (${n}), which its bytes do not`
+				);
 	};
+	return { check, end, last: () => running.at };
 };

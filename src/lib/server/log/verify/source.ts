@@ -21,9 +21,16 @@ export const openSource = (sqlite: Sqlite.Database) =>
 					'select seq, at, type, actor, cast(body as blob) as bytes from entry order by seq'
 				)
 				.iterate(),
-		subjects: sqlite.prepare<[number], { ref: string; n: number }>(
-			'select ref, n from entry_subject where seq = ? order by ref'
-		),
+		subject: sqlite
+			.prepare<[string, number], number>('select seq from entry_subject where ref = ? and n = ?')
+			.pluck(),
+		/** Rows of entry_subject for which no entry was seen; asked only when their number is wrong. */
+		subjects: () =>
+			sqlite
+				.prepare<[], { ref: string; n: number; seq: number }>(
+					'select ref, n, seq from entry_subject order by ref, n'
+				)
+				.iterate(),
 		subjectCount: () => count(sqlite, 'entry_subject'),
 		nodes: sqlite
 			.prepare<[number, number], Buffer>('select hash from node where pos between ? and ? order by pos')
