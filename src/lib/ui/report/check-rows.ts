@@ -72,7 +72,7 @@ const partRow = (part: Part): PartRow => ({
 	about: part.about,
 	verdict: part.verdict ?? null,
 	reason: part.detail ?? null,
-	parameters: parameterWords(part.parameters)
+	parameters: parameterWords(part.parameters, criticalOf(part)?.from)
 });
 
 function defaultWords({ byDefault }: Check): string | null {
@@ -98,7 +98,7 @@ export const checkRow = (check: Check): CheckRow => ({
 		check.nullHypothesis === undefined ? null : (nullWords[check.nullHypothesis] ?? check.nullHypothesis),
 	source: check.source,
 	thresholds: check.thresholdFrom,
-	parameters: parameterWords(check.parameters),
+	parameters: parameterWords(check.parameters, criticalOf(check)?.from),
 	parts: check.group === 'replication' ? [] : (check.parts ?? []).map(partRow),
 	byDefault: defaultWords(check)
 });

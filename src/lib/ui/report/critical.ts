@@ -6,6 +6,8 @@ export interface Critical {
 	readonly text: string;
 	/** What it is, where it is not the 5 % critical value of the column's head. */
 	readonly note?: string;
+	/** Parameters it was taken from: they need not be said twice. */
+	readonly from?: readonly string[];
 }
 
 type Parameters = NonNullable<Part['parameters']>;
@@ -18,15 +20,19 @@ const number = (parameters: Parameters, key: string): number | undefined => {
 function fromParameters(parameters: Parameters): Critical | null {
 	const [i0, i1] = [number(parameters, 'boundI0'), number(parameters, 'boundI1')];
 	if (i0 !== undefined && i1 !== undefined)
-		return { text: `${figure(i0)} · ${figure(i1)}`, note: 'all I(0) · all I(1)' };
+		return {
+			text: `${figure(i0)} · ${figure(i1)}`,
+			note: 'all I(0) · all I(1)',
+			from: ['boundI0', 'boundI1']
+		};
 	const [low, high] = [number(parameters, 'low'), number(parameters, 'high')];
 	// The interval of a half-life is called low and high too, but has no declared counterpart.
 	if (low !== undefined && high !== undefined && 'from' in parameters)
-		return { text: `${figure(low)} to ${figure(high)}`, note: 'declared' };
+		return { text: `${figure(low)} to ${figure(high)}`, note: 'declared', from: ['low', 'high'] };
 	const limit = number(parameters, 'limit');
-	if (limit !== undefined) return { text: figure(limit), note: 'policy' };
+	if (limit !== undefined) return { text: figure(limit), note: 'policy', from: ['limit'] };
 	const declared = parameters['declared'];
-	return typeof declared === 'string' ? { text: declared, note: 'declared' } : null;
+	return typeof declared === 'string' ? { text: declared, note: 'declared', from: ['declared'] } : null;
 }
 
 /** The value to hold the statistic of a check or of one of its parts against; null where there is none. */

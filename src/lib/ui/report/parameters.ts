@@ -38,16 +38,43 @@ const nameOf = (key: string): string =>
 
 const numberWords = (value: number): string => (Number.isInteger(value) ? figure(value, 0) : figure(value));
 
+/** Codes as words: `estimated-here` is `estimated here`, `5%` is `5 %`; periods stay as they are. */
+function textWords(key: string, value: string): string {
+	if (/deterministic$/i.test(key)) return deterministic[value] ?? value;
+	return value.replaceAll(/(?<=[a-z])-(?=[a-z])/g, ' ').replace(/(?<=\d)%$/, ' %');
+}
+
 function valueWords(key: string, value: Parameter): string {
 	if (typeof value === 'number') return numberWords(value);
 	if (typeof value === 'boolean') return value ? 'yes' : 'no';
-	if (typeof value === 'string') return /deterministic$/i.test(key) ? (deterministic[value] ?? value) : value;
+	if (typeof value === 'string') return textWords(key, value);
 	return value.map((each) => (typeof each === 'number' ? numberWords(each) : each)).join(', ');
 }
 
-/** `lags 2`, `rule AIC`: every parameter, in the order of the result. */
+/** Two parameters that are the ends of one interval. */
+const intervals: readonly (readonly [low: string, high: string, name: string])[] = [
+	['from', 'to', 'interval'],
+	['low', 'high', 'interval'],
+	['fiellerLow', 'fiellerHigh', 'Fieller interval']
+];
+
+/** Pulls both ends of an interval of numbers into one phrase. */
+function intervalWords(left: Map<string, Parameter>): string[] {
+	return intervals.flatMap(([low, high, name]) => {
+		const [from, to] = [left.get(low), left.get(high)];
+		if (typeof from !== 'number') return [];
+		left.delete(low);
+		left.delete(high);
+		return [`${name} ${numberWords(from)} to ${typeof to === 'number' ? numberWords(to) : 'without end'}`];
+	});
+}
+
+/** `lags 2`, `rule AIC`: every parameter that is not said elsewhere, in the order of the result. */
 export function parameterWords(
-	parameters: Readonly<Record<string, Parameter>> | undefined
+	parameters: Readonly<Record<string, Parameter>> | undefined,
+	said: readonly string[] = []
 ): readonly string[] {
-	return Object.entries(parameters ?? {}).map(([key, value]) => `${nameOf(key)} ${valueWords(key, value)}`);
+	const left = new Map(Object.entries(parameters ?? {}).filter(([key]) => !said.includes(key)));
+	const spans = intervalWords(left);
+	return [...spans, ...[...left].map(([key, value]) => `${nameOf(key)} ${valueWords(key, value)}`)];
 }

@@ -11,6 +11,13 @@ export interface PolicyLineView {
 /** The address of a policy line: its path is its id on the page of the policy. */
 export const policyLineHref = (path: string): string => `/policy#${path}`;
 
+/** `levels/query` is `level query`, `checks/stability.sup-f/trim` is `trim`: the check is known where it stands. */
+export function lineName(path: string): string {
+	const [section, ...rest] = path.split('/');
+	const name = (rest.at(-1) ?? path).replaceAll('-', ' ');
+	return section === 'levels' ? `level ${name}` : name;
+}
+
 const one = (value: number | string): string =>
 	typeof value === 'string'
 		? value

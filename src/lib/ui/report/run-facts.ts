@@ -35,7 +35,12 @@ export interface RunFacts {
 }
 
 /** `R-0207 · planned · finished 2026-11-19`. */
-export function statusWords({ ref, purpose, state, endedAt }: RunFacts): string {
+export function statusWords({
+	ref,
+	purpose,
+	state,
+	endedAt
+}: Pick<RunFacts, 'ref' | 'purpose' | 'state' | 'endedAt'>): string {
 	return [ref, purpose, endedAt === undefined ? state : `${state} ${formatDate(endedAt)}`].join(' · ');
 }
 
