@@ -38,7 +38,8 @@ export interface Preview {
 }
 
 const waitsFor = 24 * 60 * 60 * 1000;
-const readingTime = 20_000;
+/** Longest time for a reading, the wait for a thread included. */
+const readingTime = 60_000;
 /** A person's uploads that wait, together. */
 const mostWaiting = 8 * limits.bytes;
 
