@@ -1,10 +1,9 @@
 import { rootOf } from '$lib/chain/merkle';
 import { handle } from '$lib/server/db/handle';
-import { openReader } from '$lib/server/db/open';
+import { NoRegister, openEvidence } from '$lib/server/log/evidence';
 import { entryTexts, replay, ReplayStopped } from '$lib/server/log/replay';
 import { tableCounts } from '$lib/server/log/table-counts';
 import { projectors } from '$lib/server/projectors';
-import { existsSync } from 'node:fs';
 import { join } from 'node:path';
 
 /** `replay <data folder>`: rebuilds the register from its entries in memory and prints what came of it. */
@@ -14,12 +13,14 @@ export default async (args: string[]): Promise<number> => {
 		process.stderr.write('Usage: npm run keelbook -- replay <data folder>\n');
 		return 64;
 	}
-	const file = join(folder, 'keelbook.db');
-	if (!existsSync(file)) {
-		process.stderr.write(`${file} is not a register\n`);
+	let source;
+	try {
+		source = openEvidence(join(folder, 'keelbook.db'));
+	} catch (cause) {
+		if (!(cause instanceof NoRegister)) throw cause;
+		process.stderr.write(`${cause.message}\n`);
 		return 65;
 	}
-	const source = openReader(file);
 	try {
 		const start = process.hrtime.bigint();
 		const again = await replay(entryTexts(handle(source)), projectors);

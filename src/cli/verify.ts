@@ -1,5 +1,6 @@
 import { BadVerifierKey } from '$lib/chain/verifier-key';
-import { NoRegister, verifyRegister } from '$lib/server/log/verify';
+import { NoRegister } from '$lib/server/log/evidence';
+import { verifyRegister } from '$lib/server/log/verify';
 import type { Report } from '$lib/server/log/verify/report';
 import { projectors } from '$lib/server/projectors';
 import { join } from 'node:path';

@@ -2,8 +2,8 @@ import type { Envelope } from '$lib/chain/entry';
 import { parseVerifier, verifierText, type Verifier } from '$lib/chain/verifier-key';
 import type Sqlite from 'better-sqlite3';
 import type { Projectors } from '../context';
-import { openReader } from '../db/open';
 import { handle } from '../db/handle';
+import { openEvidence } from './evidence';
 import { verifierOfLog } from './opening';
 import { entryTexts, replay, ReplayStopped } from './replay';
 import { blobsNamed, checkBlobs } from './verify/blobs';
@@ -20,11 +20,6 @@ export interface VerifyOptions {
 	/** Verifier key noted outside the register; without it nobody vouches for the key that E-0 names. */
 	readonly key?: string;
 	readonly projectors: Projectors;
-}
-
-/** There is no register to verify. */
-export class NoRegister extends Error {
-	override readonly name = 'NoRegister';
 }
 
 interface Pass {
@@ -162,7 +157,7 @@ const checkTables = async (
 export const verifyRegister = async ({ file, key, projectors }: VerifyOptions): Promise<Report> => {
 	if (key !== undefined) parseVerifier(key);
 	const findings = new Findings();
-	const sqlite = openRegister(file);
+	const sqlite = openEvidence(file);
 	try {
 		checkFile(sqlite, findings);
 		const source = openSource(sqlite);
@@ -197,15 +192,5 @@ const namedBy = (opening: string): Verifier | undefined => {
 		return verifierOfLog(opening);
 	} catch {
 		return undefined;
-	}
-};
-
-const openRegister = (file: string): Sqlite.Database => {
-	try {
-		const sqlite = openReader(file);
-		sqlite.prepare('select seq, body from entry limit 1').get();
-		return sqlite;
-	} catch (cause) {
-		throw new NoRegister(`${file} is not a register`, { cause });
 	}
 };
