@@ -36,6 +36,8 @@ export interface ProposalView {
 
 export interface PolicyPage {
 	readonly inForce: AdoptedPolicy;
+	/** The policy shown: the one in force, or an earlier one that a run was judged by. */
+	readonly shown: { readonly policy: Policy; readonly digest: string; readonly inForce: boolean };
 	readonly lines: readonly LineView[];
 	readonly adoptions: readonly AdoptionView[];
 	readonly proposal?: ProposalView;
@@ -68,15 +70,21 @@ const proposalOf = (ctx: Ctx, handle: Handle, actor: Actor): ProposalView | unde
 };
 
 /**
- * The policy in force in words, every adoption, and the proposal that waits.
+ * The policy in force in words, or the earlier one of a digest; every adoption, and the proposal that waits.
  *
  * @throws Refused, Absent
  */
-export const policyPage = (ctx: Ctx, actor: Actor, handle: Handle = ctx.read): PolicyPage => {
+export const policyPage = (
+	ctx: Ctx,
+	actor: Actor,
+	digest?: string,
+	handle: Handle = ctx.read
+): PolicyPage => {
 	allow(ctx, handle, actor, 'policy.read');
 	const inForce = adoptedPolicy(ctx, handle);
+	const policy = digest === undefined ? inForce.policy : policyOf(ctx, handle, digest);
 	const released = [...ctx.policies].map(([digest, policy]) => ({ digest, release: policy.release, policy }));
-	const release = released.find((each) => each.release === inForce.release)?.policy;
+	const release = released.find((each) => each.release === policy.release)?.policy;
 	const rows = handle.all(policyAdoptions(handle.q));
 	const names = ctx.people.names(
 		rows.flatMap(({ by, proposed_by }) => [by, ...(proposed_by === null ? [] : [proposed_by])]) as PersonId[]
@@ -84,7 +92,12 @@ export const policyPage = (ctx: Ctx, actor: Actor, handle: Handle = ctx.read): P
 	const proposal = proposalOf(ctx, handle, actor);
 	return {
 		inForce,
-		lines: lineViews(inForce.policy, release),
+		shown: {
+			policy,
+			digest: digest ?? inForce.digest,
+			inForce: digest === undefined || digest === inForce.digest
+		},
+		lines: lineViews(policy, release),
 		adoptions: rows.map((row) => ({
 			entry: row.adopted,
 			digest: row.digest,
@@ -100,12 +113,6 @@ export const policyPage = (ctx: Ctx, actor: Actor, handle: Handle = ctx.read): P
 		releases: released.map(({ digest, release: name }) => ({ digest, release: name })),
 		mayPropose: may(ctx, handle, actor, 'policy.adopt')
 	};
-};
-
-/** The policy that an old run was judged by. */
-export const policyOfDigest = (ctx: Ctx, actor: Actor, digest: string, handle: Handle = ctx.read): Policy => {
-	allow(ctx, handle, actor, 'policy.read');
-	return policyOf(ctx, handle, digest);
 };
 
 /**

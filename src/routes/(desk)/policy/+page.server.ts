@@ -10,7 +10,8 @@ import { policyPage } from '$lib/server/policy/policy-view';
 import type { StatementView } from '$lib/ui/step-up';
 import type { Actions, PageServerLoad } from './$types';
 
-export const load: PageServerLoad = (event) => serve(event, (ctx, actor) => policyPage(ctx, actor));
+export const load: PageServerLoad = (event) =>
+	serve(event, (ctx, actor) => policyPage(ctx, actor, event.url.searchParams.get('policy') ?? undefined));
 
 const proposalForm = z.object({ proposal: z.coerce.number<number>().int().min(0) });
 const signedForm = proposalForm.extend({ challenge: z.string(), response: z.string() });
