@@ -136,24 +136,26 @@ export const runOf = (
 	return Object.freeze({ ...viewOfRun(ctx, handle, row, names), mayCancel });
 };
 
-const stored = (ctx: Ctx, digest: string): unknown => {
+const bytesOf = (ctx: Ctx, digest: string): Buffer => {
 	const bytes = ctx.blobs.get(digest);
 	if (!bytes) throw new Absent(`The bytes of ${digest} are not in this register.`);
-	return JSON.parse(bytes.toString());
+	return bytes;
 };
 
 /** The exact request that was computed. */
 export const requestOf = (ctx: Ctx, actor: Actor, ref: string, handle: Handle = ctx.read): RunRequest =>
-	stored(ctx, readableRow(ctx, handle, actor, ref).request_digest) as RunRequest;
+	JSON.parse(bytesOf(ctx, readableRow(ctx, handle, actor, ref).request_digest).toString()) as RunRequest;
+
+/** The exact bytes of a result as they were stored. @throws Conflict while there are none */
+export const resultBytes = (ctx: Ctx, actor: Actor, ref: string, handle: Handle = ctx.read): Buffer => {
+	const row = readableRow(ctx, handle, actor, ref);
+	if (row.result_blob !== null) return bytesOf(ctx, row.result_blob);
+	const ended = row.state === 'failed' ? 'failed' : 'was cancelled';
+	throw new Conflict(
+		row.state === 'requested' ? `${ref} is still being computed.` : `${ref} has no result: it ${ended}.`
+	);
+};
 
 /** The whole result of a run. @throws Conflict while there is none */
-export const resultOf = (ctx: Ctx, actor: Actor, ref: string, handle: Handle = ctx.read): RunResult => {
-	const row = readableRow(ctx, handle, actor, ref);
-	if (row.result_blob === null)
-		throw new Conflict(
-			row.state === 'requested'
-				? `${ref} is still being computed.`
-				: `${ref} has no result: it ${row.state === 'failed' ? 'failed' : 'was cancelled'}.`
-		);
-	return stored(ctx, row.result_blob) as RunResult;
-};
+export const resultOf = (ctx: Ctx, actor: Actor, ref: string, handle: Handle = ctx.read): RunResult =>
+	JSON.parse(resultBytes(ctx, actor, ref, handle).toString()) as RunResult;
