@@ -60,36 +60,40 @@ const watched = (piscina: Piscina) => {
 	};
 };
 
+const threadsOf = (maxThreads: number, heap: number): Piscina =>
+	new Piscina({
+		filename,
+		minThreads: 0,
+		maxThreads,
+		idleTimeout: 60_000,
+		resourceLimits: { maxOldGenerationSizeMb: heap, stackSizeMb: 4 }
+	});
+
 /**
- * Opens the pool of threads; they start with the first task.
+ * Opens the pool of threads; they start with the first task. Files are read by threads of their own, so that an upload
+ * does not wait for a long run.
  * @throws Error when the file of the thread is missing
  */
 export const createPool = (threads: number = Math.max(2, availableParallelism() - 1)): Pool => {
 	if (!existsSync(filename)) throw new Error(`The program is incomplete: ${filename} is missing.`);
-	const piscina = new Piscina({
-		filename,
-		minThreads: 0,
-		maxThreads: threads,
-		idleTimeout: 60_000,
-		resourceLimits: { maxOldGenerationSizeMb: 1024 }
-	});
-	const run = watched(piscina);
+	const [computing, reading] = [threadsOf(threads, 1024), threadsOf(2, 256)];
+	const [compute, read] = [watched(computing), watched(reading)];
 	let closing = false;
 	return Object.freeze({
 		compute: async (task, { signal, progress } = {}) => {
 			const { port1, port2 } = new MessageChannel();
 			port1.on('message', (told: Progress) => progress?.(told));
 			try {
-				return await run<Computed>({ ...task, port: port2 }, 'compute', [port2], signal);
+				return await compute<Computed>({ ...task, port: port2 }, 'compute', [port2], signal);
 			} finally {
 				port1.close();
 			}
 		},
-		parse: (input, { signal } = {}) => run<ParseOutcome>(input, 'parse', [], signal),
+		parse: (input, { signal } = {}) => read<ParseOutcome>(input, 'parse', [], signal),
 		closed: () => closing,
 		close: async () => {
 			closing = true;
-			await piscina.destroy();
+			await Promise.all([computing.destroy(), reading.destroy()]);
 		}
 	} satisfies Pool);
 };
