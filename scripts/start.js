@@ -52,7 +52,8 @@ server.listen(Number(env.PORT), env.HOST, () => {
 
 /** Finish what is being answered, close the register (its last checkpoint is signed), leave. */
 const leave = () => {
-	server.close(() => process.exit(0));
+	const closed = new Promise((done) => process.once('keelbook:closed', done));
+	server.close(() => void closed.then(() => process.exit(0)));
 	server.closeIdleConnections();
 	process.emit(/** @type {'SIGUSR2'} */ (/** @type {unknown} */ ('sveltekit:shutdown')), 'SIGUSR2');
 	setTimeout(() => process.exit(0), 10_000).unref();

@@ -150,5 +150,8 @@ export const start = async (): Promise<void> => {
 	}
 	enterStart(opened.ctx);
 	startRuns(opened.ctx);
-	process.once('sveltekit:shutdown' as never, () => void opened.close());
+	process.once('sveltekit:shutdown' as never, () => {
+		// The process leaves only after the last checkpoint is signed.
+		void opened.close().finally(() => process.emit('keelbook:closed' as never));
+	});
 };
