@@ -185,7 +185,11 @@ export interface Check {
 	readonly parts?: readonly Part[];
 	readonly plot?: CheckPlot;
 	/** The outcome under the policy's own settings, where an override changed it. */
-	readonly byDefault?: { readonly verdict: Verdict | null; readonly statistic: Figure; readonly pValue: Figure };
+	readonly byDefault?: {
+		readonly verdict: Verdict | null;
+		readonly statistic: Figure;
+		readonly pValue: Figure;
+	};
 }
 
 export interface Group {

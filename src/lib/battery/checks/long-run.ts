@@ -158,7 +158,7 @@ export const longRunPrecision = onModel(
 			rejected: shown,
 			verdict: shown ? 'holds' : 'query',
 			because: open ? ['long-run-not-determined'] : [],
-			statistic: { name: 'speed-t', value: ratio },
+			statistic: { name: 'speed-t', value: figure(ratio) },
 			parts,
 			n: model.residuals.length
 		});
