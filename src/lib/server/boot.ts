@@ -11,6 +11,7 @@ import { takeLease } from './db/lease';
 import { programOf } from './db/program';
 import { seedDemo } from './demo/seed';
 import { stageOf } from './demo/stage';
+import { sweepSessions } from './auth/sessions';
 import { openLog } from './log/open';
 import { record } from './log/record';
 import { people } from './people/directory';
@@ -148,6 +149,7 @@ export const start = async (): Promise<void> => {
 		);
 		for (const { url } of firstLinks(opened.ctx)) process.stdout.write(`  ${url}\n`);
 	}
+	sweepSessions(opened.ctx);
 	enterStart(opened.ctx);
 	startRuns(opened.ctx);
 	process.once('sveltekit:shutdown' as never, () => {

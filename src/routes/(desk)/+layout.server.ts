@@ -1,3 +1,4 @@
+import type { PersonId } from '$lib/domain/actor';
 import { roleWords } from '$lib/domain/roles';
 import { serve } from '$lib/server/http/serve';
 import { logHead } from '$lib/server/log/head';
@@ -19,6 +20,10 @@ export const load: LayoutServerLoad = (event) =>
 				href: `/models/${model}`,
 				overdue: due.overdue
 			})),
+			// Those who may read all of it, and those who see the part about their own models.
+			seesLog:
+				may(ctx, ctx.read, actor, 'log.read') ||
+				(actor.person.startsWith('p_') && ctx.facts.parties(ctx.read, actor.person as PersonId).length > 0),
 			seesPeople: may(ctx, ctx.read, actor, 'people.read'),
 			folio: size - 1,
 			at
