@@ -15,6 +15,19 @@ const list = (items: readonly string[]): string =>
 const count = (n: number, noun: string): string => `${n} ${noun}${n === 1 ? '' : 's'}`;
 const day = (instant: string): string => instant.slice(0, 10);
 
+/** What people do in their own name is said without it. */
+const own: Words = {
+	'person.enrolled': () => 'enrolled',
+	'credential.enrolled': ({ kind }) => `enrolled a ${kind}`,
+	'credential.revoked': () => 'revoked a passkey of their own',
+	'password.set': () => 'set a password',
+	'recovery-codes.made': ({ count: made }) => `made ${count(made, 'recovery code')}`,
+	'recovery-code.used': ({ left }) => `used a recovery code; ${left} left`,
+	'session.opened': () => 'signed in',
+	'session.closed': ({ reason }) => (reason === 'signed out' ? 'signed out' : `left a session: ${reason}`),
+	'token.created': ({ token, scopes }) => `made token ${token} for ${list(scopes)}`
+};
+
 /** What each event says in words; the actor is named before it. */
 const words: Words = {
 	'log.opened': ({ institution, demo }) =>
@@ -81,7 +94,7 @@ const words: Words = {
 		`refused an upload for ${model}: ${code}, ${count(issues, 'finding')}`,
 
 	'run.requested': ({ run, version, vintage, purpose }) =>
-		`asked for ${run}, a ${purpose} run of ${version} on ${vintage}`,
+		`asked for ${run}, ${purpose === 'exploratory' ? 'an' : 'a'} ${purpose} run of ${version} on ${vintage}`,
 	'run.finished': ({ run, checks }) =>
 		`finished ${run}: ${checks.holds} hold, ${checks.query} query, ${checks.fails} fail, ${checks.notAssessable} not assessable`,
 	'run.failed': ({ run, sentence }) => `ended ${run} without a result: ${sentence}`,
@@ -90,13 +103,20 @@ const words: Words = {
 
 /** What an entry says, as a clause that follows the actor's name. */
 export const entryWords = (entry: Entry, name: NameOf): string => {
-	const say = words[entry.type] as ((payload: unknown, name: NameOf) => string) | undefined;
-	return say ? say(entry.payload, name) : entry.type.replace('.', ' ');
+	const { person } = entry.payload as { readonly person?: string };
+	const say = (person === entry.actor ? own[entry.type] : undefined) ?? words[entry.type];
+	return say
+		? (say as (payload: unknown, name: NameOf) => string)(entry.payload, name)
+		: entry.type.replace('.', ' ');
 };
 
-/** Everybody an entry speaks of: its actor, and the ids in its payload. */
-export const peopleIn = ({ actor, behalf, payload }: Entry): (PersonId | 'system' | 'cli')[] => [
+/** Actor and clause as a sentence. */
+export const entrySentence = (actor: string, clause: string): string =>
+	`${actor.charAt(0).toUpperCase()}${actor.slice(1)} ${clause}.`;
+
+/** Everybody an entry speaks of: its actor, and the ids in its subjects and payload. */
+export const peopleIn = ({ actor, behalf, subjects, payload }: Entry): (PersonId | 'system' | 'cli')[] => [
 	actor,
 	...(behalf ? [behalf] : []),
-	...(JSON.stringify(payload).match(/p_[a-z2-7]{26}/g) ?? []).map((id) => id as PersonId)
+	...(JSON.stringify([subjects, payload]).match(/p_[a-z2-7]{26}/g) ?? []).map((id) => id as PersonId)
 ];

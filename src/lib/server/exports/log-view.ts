@@ -1,6 +1,6 @@
 import type { Actor, PersonId } from '$lib/domain/actor';
 import type { Entry } from '$lib/domain/entry';
-import { entryWords, peopleIn } from '$lib/domain/entry-words';
+import { entrySentence, entryWords, peopleIn } from '$lib/domain/entry-words';
 import { Absent } from '$lib/domain/faults';
 import { verifierText } from '$lib/chain/verifier-key';
 import type { Ctx } from '../context';
@@ -16,9 +16,10 @@ export interface EntryLine {
 	readonly at: string;
 	readonly type: string;
 	readonly actor: { readonly id: string; readonly name: string };
-	/** Follows the actor's name. */
-	readonly words: string;
-	readonly subjects: readonly string[];
+	/** What happened, as a sentence. */
+	readonly sentence: string;
+	/** What it is about; a person's label is their name. */
+	readonly subjects: readonly { readonly ref: string; readonly label: string }[];
 	readonly means: string;
 	readonly changes: readonly RowChange[];
 }
@@ -51,28 +52,29 @@ const visible = (ctx: Ctx, actor: Actor): readonly string[] | undefined => {
 	return own;
 };
 
-/** Ids of people where they stand alone, replaced by their names. */
+const idForm = /p_[a-z2-7]{26}/g;
+
+/** A value with the ids of people replaced by their names. */
 const named = (value: unknown, names: ReadonlyMap<string, string>): unknown => {
-	if (typeof value === 'string') return names.get(value) ?? value;
+	if (typeof value === 'string') return value.replace(idForm, (id) => names.get(id) ?? id);
 	if (Array.isArray(value)) return value.map((item) => named(item, names));
 	if (typeof value !== 'object' || value === null) return value;
 	return Object.fromEntries(Object.entries(value).map(([key, member]) => [key, named(member, names)]));
 };
-
-const idForm = /p_[a-z2-7]{26}/g;
 
 const line = (ctx: Ctx, entry: Entry, known: ReadonlyMap<string, string>): EntryLine => {
 	const changes = changesOf(ctx.read, entry.seq);
 	// A row may speak of people that its entry does not.
 	const others = (JSON.stringify(changes).match(idForm) ?? []).filter((id) => !known.has(id)) as PersonId[];
 	const names = others.length === 0 ? known : new Map([...known, ...ctx.people.names(others)]);
+	const name = (id: string): string => names.get(id) ?? id;
 	return {
 		seq: entry.seq,
 		at: entry.at,
 		type: entry.type,
-		actor: { id: entry.actor, name: names.get(entry.actor) ?? entry.actor },
-		words: entryWords(entry, (id) => names.get(id) ?? id),
-		subjects: entry.subjects.map(({ ref }) => ref),
+		actor: { id: entry.actor, name: name(entry.actor) },
+		sentence: entrySentence(name(entry.actor), entryWords(entry, name)),
+		subjects: entry.subjects.map(({ ref }) => ({ ref, label: name(ref) })),
 		means: entry.auth.means,
 		changes: changes.map((change) => named(change, names) as RowChange)
 	};

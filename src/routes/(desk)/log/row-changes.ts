@@ -14,4 +14,7 @@ const told = (columns: Readonly<Record<string, unknown>> | undefined): Record<st
 
 /** The fields of a row that differ, each before and after. */
 export const changedFields = ({ before, after }: RowChange): readonly FieldChange[] =>
-	fieldChanges(told(before), told(after));
+	fieldChanges(told(before), told(after)).map((change) => ({
+		...change,
+		field: change.field.replaceAll('_', ' ')
+	}));
