@@ -91,7 +91,7 @@ describe('a vintage', () => {
 		await expect(confirmVintage(desk.ctx, other, desk.model, confirmation(preview))).rejects.toThrow(Refused);
 		desk.clock.forward(25 * 3_600_000);
 		await expect(confirmVintage(desk.ctx, desk.owner, desk.model, confirmation(preview))).rejects.toThrow(
-			Absent
+			Conflict
 		);
 		await send(later);
 		expect(count(desk.ctx, 'upload')).toBe(1);

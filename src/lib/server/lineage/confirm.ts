@@ -1,7 +1,7 @@
 import { canonical } from '$lib/chain/canonical';
 import { digestOf } from '$lib/chain/digest';
 import type { Actor } from '$lib/domain/actor';
-import { Absent, Invalid } from '$lib/domain/faults';
+import { Absent, Conflict, Invalid } from '$lib/domain/faults';
 import { seriesId, type Note, type ParsedTable } from '$lib/domain/lineage';
 import { uploadIssue, type UploadIssue } from '$lib/domain/lineage-codes';
 import {
@@ -122,7 +122,7 @@ const refuseUnread = (
  * Stores a previewed file as a vintage: exact bytes, the table read from them, the lineage of each column, in one
  * transaction with its entry. Opens a dataset where none is named.
  * @returns its reference, `D-0051/2`
- * @throws Invalid with codes such as `changed`, `same-file`, `vintage-twice`, `future`; Absent, Refused
+ * @throws Invalid with codes such as `changed`, `same-file`, `vintage-twice`, `future`; Absent, Refused, Conflict
  */
 export const confirmVintage = async (
 	ctx: Ctx,
@@ -146,7 +146,7 @@ export const confirmVintage = async (
 		const grant = allow(ctx, tx, actor, 'dataset.store', { model });
 		// Read again inside the transaction: the upload may have been confirmed or discarded meanwhile.
 		const bytes = tx.first(uploadById(tx.q, upload.id))?.bytes;
-		if (!bytes) throw new Absent('This upload is not waiting any more. Send the file again.');
+		if (!bytes) throw new Conflict('This upload is not waiting any more. Send the file again.');
 		if (digestOf(bytes) !== input.sha256)
 			throw new Invalid([uploadIssue('changed', [], { pointer: '/sha256' })]);
 		const same = tx.first(vintageOfBytes(tx.q, upload.sha256, model));

@@ -1,35 +1,40 @@
-import { shown, reject } from './rejected';
+import type { GridRow } from './grid';
+import { reject, shown } from './rejected';
 import { markEvidence, type DecimalMark } from './numbers';
 
-/** A cell of text with its place. */
-export interface TextCell {
-	readonly row: number;
-	readonly text: string;
-}
-
-export interface TextColumn {
+/** A column to look at: its name and its place in the rows. */
+export interface PlacedColumn {
 	readonly name: string;
-	readonly cells: readonly TextCell[];
+	readonly at: number;
 }
 
 interface Seen {
 	readonly column: string;
-	readonly cell: TextCell;
+	readonly cell: { readonly row: number; readonly text: string };
 }
 
 /**
  * The decimal mark of a file, from its decisive cells; one mark a file.
  * @throws Rejected `mixed-decimal` where cells contradict each other, `ambiguous-number` where only the uploader knows.
  */
-export const decimalMarkOf = (columns: readonly TextColumn[], chosen?: DecimalMark): DecimalMark => {
+export const decimalMarkOf = (
+	columns: readonly PlacedColumn[],
+	rows: readonly GridRow[],
+	chosen?: DecimalMark
+): DecimalMark => {
 	if (chosen) return chosen;
 	let dot: Seen | undefined;
 	let comma: Seen | undefined;
 	let either: Seen | undefined;
-	for (const { name, cells } of columns)
-		for (const cell of cells) {
-			const evidence = markEvidence(cell.text);
-			const seen = { column: name, cell };
+	for (const { name: column, at } of columns)
+		for (const { row, cells } of rows) {
+			const text = cells[at];
+			if (typeof text !== 'string') continue;
+			// A lone point says nothing new once one is known, and nearly every cell of a large file has just that.
+			if (dot && !text.includes(',') && text.indexOf('.') === text.lastIndexOf('.')) continue;
+			const evidence = markEvidence(text);
+			if (evidence === undefined) continue;
+			const seen = { column, cell: { row, text } };
 			if (evidence === '.') dot ??= seen;
 			else if (evidence === ',') comma ??= seen;
 			else if (evidence === 'thousand-or-point') either ??= seen;

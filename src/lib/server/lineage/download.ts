@@ -12,7 +12,8 @@ const extended = (name: string): string =>
 
 /**
  * The exact bytes as a download: never shown by the browser, under a policy of its own; an ASCII name that we made, and
- * the file's own name beside it (RFC 6266).
+ * the file's own name beside it (RFC 6266), and the digest as RFC 9530
+ * writes it.
  */
 export const download = (ref: string, file: ReturnType<typeof vintageFile>): Response =>
 	new Response(new Uint8Array(file.bytes), {
@@ -21,6 +22,6 @@ export const download = (ref: string, file: ReturnType<typeof vintageFile>): Res
 			'content-length': String(file.bytes.length),
 			'content-disposition': `attachment; filename="${ref.replace('/', '-')}.${file.media}"; filename*=UTF-8''${extended(file.fileName)}`,
 			'content-security-policy': "sandbox; default-src 'none'",
-			digest: `sha-256=${Buffer.from(file.sha256.slice(7), 'hex').toString('base64')}`
+			'repr-digest': `sha-256=:${Buffer.from(file.sha256.slice(7), 'hex').toString('base64')}:`
 		}
 	});

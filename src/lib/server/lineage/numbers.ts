@@ -59,12 +59,19 @@ const core = /^([+-]?)(\d*)(?:\.(\d*))?(?:[eE]([+-]?\d{1,6}))?$/;
 
 const fault = (code: NumberFault): NumberReading => ({ kind: 'fault', code });
 
+/** Nearly every cell of nearly every file: digits, one point at most, no more than a double holds. */
+const plain = /^-?(?=[\d.]{1,18}$)\d{1,17}(?:\.\d+)?$/;
+
 /**
  * Reads one cell of text as a number with the given decimal mark. Empty, NA, NaN, `.`, `#N/A` and `-` are missing,
  * never zero; thousands may be grouped by spaces, apostrophes or the other mark where groups of three fit; percent and
  * currency signs, letters and footnote marks are refused, because a unit belongs to the series and not to a cell.
  */
 export const readNumber = (cell: string, mark: DecimalMark): NumberReading => {
+	if (mark === '.' && plain.test(cell)) {
+		const value = Number(cell);
+		return { kind: 'value', value: value === 0 ? 0 : value, flags: [] };
+	}
 	const trimmed = cell.trim();
 	if (missing.has(trimmed.toLowerCase())) return { kind: 'missing' };
 	const flags: NumberFlag[] = [];

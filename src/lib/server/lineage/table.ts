@@ -169,15 +169,6 @@ class ColumnReader {
 	}
 }
 
-const textColumns = (named: NamedTable, columns: readonly number[]) =>
-	columns.map((i) => ({
-		name: named.names[i]!,
-		cells: named.rows.flatMap(({ row, cells }) => {
-			const cell = cells[i];
-			return typeof cell === 'string' ? [{ row, text: cell }] : [];
-		})
-	}));
-
 const readColumns = (
 	named: NamedTable,
 	columns: readonly number[],
@@ -210,7 +201,8 @@ export const readTable = (grid: Grid, choices: Choices): TableReading => {
 	const source = periodSource(named, choices.periodColumn);
 	const periods = readPeriods(source.cells, choices.dateOrder);
 	const columns = named.names.map((_, i) => i).filter((i) => !source.columns.includes(i));
-	const mark = decimalMarkOf(textColumns(named, columns), choices.decimal);
+	const placed = columns.map((at) => ({ name: named.names[at]!, at }));
+	const mark = decimalMarkOf(placed, named.rows, choices.decimal);
 	const readers = readColumns(named, columns, mark, !grid.even);
 	const leftOut = readers.flatMap((reader) => reader.leftOut ?? []);
 	const kept = readers.filter((reader) => !reader.leftOut).map((reader) => reader.result(periods.order));

@@ -2,7 +2,7 @@ import { randomBytes } from 'node:crypto';
 import { base32 } from '$lib/chain/base32';
 import { digestOf } from '$lib/chain/digest';
 import type { Actor } from '$lib/domain/actor';
-import { Absent, Invalid } from '$lib/domain/faults';
+import { Conflict, Invalid } from '$lib/domain/faults';
 import { limits, type Choices } from '$lib/domain/lineage';
 import { uploadIssue, type UploadIssue } from '$lib/domain/lineage-codes';
 import type { Ctx } from '../context';
@@ -157,18 +157,18 @@ export const tooLarge = (): UploadIssue => uploadIssue('too-large', [limits.byte
 
 /**
  * An upload that waits, by the person who sent it alone.
- * @throws Absent when it is another's, was confirmed, or has expired
+ * @throws Conflict when it is another's, was confirmed, or has expired
  */
 export const waitingUpload = (ctx: Ctx, actor: Actor, id: string, model: string) => {
 	const row = ctx.read.first(uploadById(ctx.read.q, id));
 	if (!row || row.person !== actor.person || row.model !== model || row.expires_at <= ctx.now().toISOString())
-		throw new Absent('This upload is not waiting any more. Send the file again.');
+		throw new Conflict('This upload is not waiting any more. Send the file again.');
 	return row;
 };
 
 /**
  * Reads a waiting upload again with other choices. A file that cannot be read under them stays: other choices may do.
- * @throws Absent, Refused
+ * @throws Absent, Refused, Conflict
  */
 export const previewUpload = async (
 	ctx: Ctx,

@@ -1,13 +1,11 @@
 import type { Actor } from '$lib/domain/actor';
-import { Absent } from '$lib/domain/faults';
+import { Absent, Refused } from '$lib/domain/faults';
 import type { Note, ParsedTable } from '$lib/domain/lineage';
 import { compareVintages, type VintageComparison } from '$lib/domain/lineage-comparison';
 import { integrityFindings } from '$lib/domain/lineage-integrity';
-import { part } from '$lib/domain/references';
+import { parent, part } from '$lib/domain/references';
 import type { Ctx } from '../context';
 import type { Handle } from '../db/handle';
-import { may } from '../people/allow';
-import { Refused } from '$lib/domain/faults';
 import {
 	datasetByRef,
 	datasetsOfModel,
@@ -15,15 +13,18 @@ import {
 	vintageByRef,
 	vintagesOfDataset
 } from './lineage.queries';
-import { allow } from '../people/allow';
+import { allow, may } from '../people/allow';
 import { readTable, readVintage, storedVintage, type StoredVintage } from './read';
+
+/** One answer to what does not exist and to what may not be seen. */
+const noSuchPage = 'There is no such page.';
 
 /** Whoever may read the data of one model that uses the dataset may read the dataset. */
 const requireReading = (ctx: Ctx, handle: Handle, actor: Actor, dataset: string): readonly string[] => {
 	const models = handle.all(modelsOfDataset(handle.q, dataset)).map(({ model }) => model);
-	if (models.length === 0) throw new Absent(`There is no dataset ${dataset}.`);
+	if (models.length === 0) throw new Absent(noSuchPage);
 	if (!models.some((model) => may(ctx, handle, actor, 'data.read', { model })))
-		throw new Refused('S11', 'data.read', `There is no dataset ${dataset}.`, false, dataset);
+		throw new Refused('S11', 'data.read', noSuchPage, false, dataset);
 	return models;
 };
 
@@ -40,7 +41,7 @@ export interface DatasetView {
 export const datasetView = (ctx: Ctx, actor: Actor, ref: string, handle: Handle = ctx.read): DatasetView => {
 	const models = requireReading(ctx, handle, actor, ref);
 	const row = handle.first(datasetByRef(handle.q, ref));
-	if (!row) throw new Absent(`There is no dataset ${ref}.`);
+	if (!row) throw new Absent(noSuchPage);
 	return {
 		ref,
 		name: row.name,
@@ -94,8 +95,9 @@ const lineageChanges = (before: StoredVintage, after: StoredVintage): Note[] =>
 
 /** A vintage with its figures, findings and the comparison with the one before. */
 export const vintageView = (ctx: Ctx, actor: Actor, ref: string, handle: Handle = ctx.read): VintageView => {
+	if (!handle.first(vintageByRef(handle.q, ref))) throw new Absent(noSuchPage);
+	const models = requireReading(ctx, handle, actor, parent(ref));
 	const vintage = readVintage(ctx, handle, ref);
-	const models = requireReading(ctx, handle, actor, vintage.dataset);
 	const dataset = handle.first(datasetByRef(handle.q, vintage.dataset))!;
 	const table = readTable(ctx, vintage);
 	const earlier = vintage.n > 1 ? readVintage(ctx, handle, part(vintage.dataset, vintage.n - 1)) : undefined;
@@ -131,7 +133,7 @@ export const vintageFile = (
 	readonly sha256: string;
 } => {
 	const row = ctx.read.first(vintageByRef(ctx.read.q, ref));
-	if (!row) throw new Absent(`There is no vintage ${ref}.`);
+	if (!row) throw new Absent(noSuchPage);
 	requireReading(ctx, ctx.read, actor, row.dataset);
 	const bytes = ctx.blobs.get(row.sha256);
 	if (!bytes) throw new Absent('The bytes of this vintage are not in the register.');

@@ -9,16 +9,29 @@ import { glimpseOf } from '$lib/server/lineage/preview-view';
 import { storeUpload, tooLarge } from '$lib/server/lineage/upload';
 import type { RequestHandler } from './$types';
 
-/** Reads the body up to the limit; a declared length is not believed, and what is beyond is not read. */
+/**
+ * Reads the body up to the limit; a declared length is not believed, and what is beyond is not read. The stream is left
+ * and not cancelled: cancelling would end the connection before the answer is on it.
+ */
 const readBody = async (request: Request): Promise<Uint8Array | undefined> => {
+	const reader = request.body?.getReader();
 	const chunks: Uint8Array[] = [];
 	let size = 0;
-	for await (const chunk of (request.body ?? []) as AsyncIterable<Uint8Array>) {
-		size += chunk.length;
+	for (;;) {
+		const { done, value } = (await reader?.read()) ?? { done: true };
+		if (done) return Buffer.concat(chunks);
+		size += value.length;
 		if (size > limits.bytes) return undefined;
-		chunks.push(chunk);
+		chunks.push(value);
 	}
-	return Buffer.concat(chunks);
+};
+
+/** The answer to a file over the limit; the rest of it is not waited for. */
+const overLimit = (): Response => {
+	const issue = tooLarge();
+	const response = problem({ status: 413, title: 'Too large', detail: issue.message, issues: [issue] });
+	response.headers.set('connection', 'close');
+	return response;
 };
 
 /** What the address says beside the file: its model, its name, choices of reading. */
@@ -41,10 +54,7 @@ export const POST: RequestHandler = (event) =>
 		async (ctx, actor) => {
 			const { model, name, choices } = asked(event.url.searchParams);
 			const bytes = await readBody(event.request);
-			if (!bytes) {
-				const issue = tooLarge();
-				return problem({ status: 413, title: 'Too large', detail: issue.message, issues: [issue] });
-			}
+			if (!bytes) return overLimit();
 			const { parsed, ...preview } = await storeUpload(ctx, actor, { model, bytes, fileName: name, choices });
 			const table = parsed && {
 				how: parsed.how,
