@@ -21,9 +21,14 @@ describe('digest of a result', () => {
 		expect(digest(reversed)).toBe(first);
 	});
 
+	test('a validator who repeats a run gets its digest', () => {
+		const validation = runBattery({ ...base, purpose: 'validation' }, policy, data);
+		expect(validation.digest).toBe(first);
+		expect(validation.request.purpose).toBe('validation');
+	});
+
 	test.each([
 		['seed', { ...base, seed: 1 }],
-		['purpose', { ...base, purpose: 'validation' }],
 		['tier', { ...base, tier: 3 }],
 		['vintage', { ...base, vintage: `sha256:${'1'.repeat(64)}` }],
 		['engine', { ...base, engine: '0.0.0' }],

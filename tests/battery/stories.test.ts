@@ -28,6 +28,27 @@ describe('a sound model', () => {
 	});
 });
 
+describe('an overridden setting', () => {
+	const data = simulated({ seed: 3, n: 160, speed: 0.3, slope: [1, 1], breakAt: 160 });
+	const setting = { setting: 'checks/adjustment.half-life/longest', value: 1, reason: 'a short horizon' };
+	const result = run(simulatedSpecification(data), data, { settings: [setting] });
+
+	test('is used, and the policy’s own outcome stands beside it', () => {
+		const check = checkIn(result, 'adjustment.half-life');
+		expect(check).toMatchObject({ verdict: 'query', because: ['too-slow'], byDefault: { verdict: 'holds' } });
+		expect(checkSentence(check)).toContain('Under the policy’s own settings: holds');
+		expect(checkIn(result, 'adjustment.sign').byDefault).toBeUndefined();
+		expect(result.request.settings).toEqual([setting]);
+	});
+
+	test('a line that the policy keeps fixed cannot be overridden', () => {
+		const fixed = { setting: 'checks/stability.sup-f/trim', value: 0.1, reason: 'r' };
+		expect(() => run(simulatedSpecification(data), data, { settings: [fixed] })).toThrow(
+			'does not let a run change'
+		);
+	});
+});
+
 describe('a relation that breaks', () => {
 	const data = simulated({ seed: 5, n: 160, speed: 0.4, slope: [1, 0.4], breakAt: 90 });
 	const result = run(simulatedSpecification(data), data);

@@ -42,13 +42,15 @@ const reasonOnly = <T extends { readonly refused?: { readonly reason: string } }
 
 /**
  * SHA-256 of the numbers, verdicts, parameters and reasons of a result and of its request, canonical, at ten significant
- * digits. The specification counts by its digest in the request.
+ * digits. The specification counts by its digest in the request. The purpose does not count: a validator who repeats
+ * the owner's run must be able to read that the results are equal.
  */
 export const resultDigest = (result: Omit<RunResult, 'digest'>): string =>
 	valueDigest(
 		rounded(
 			reasonOnly({
 				...(without(result, ['specification']) as { refused?: { reason: string } }),
+				request: without(result.request, ['digest', 'purpose']),
 				companions: result.companions.map(reasonOnly),
 				checks: result.checks.map(evidenceOf)
 			})

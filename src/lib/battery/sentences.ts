@@ -183,6 +183,8 @@ const integrity = (check: Check): string => {
 const replication = (check: Check): string => {
 	const claimed = figureOf(check, 'claimed') ?? 0;
 	const apart = figureOf(check, 'apart') ?? 0;
+	if (claimed === 1)
+		return `The one claimed figure ${apart === 0 ? 'comes' : 'does not come'} out to the digits claimed.`;
 	return apart === 0
 		? `All ${counted(claimed, 'claimed figure')} come out to the digits claimed.`
 		: `${apart} of ${counted(claimed, 'claimed figure')} ${apart === 1 ? 'does' : 'do'} not come out to the digits claimed.`;
@@ -232,6 +234,14 @@ const special: Readonly<Record<string, (check: Check) => string>> = {
 	'family.false-alarms': family
 };
 
+/** An override is shown beside what the policy's own settings give. */
+const byDefaultText = ({ byDefault }: Check): string => {
+	if (!byDefault) return '';
+	const { verdict, statistic } = byDefault;
+	const value = statistic === null ? '' : `, statistic ${significant(statistic)}`;
+	return `Under the policy’s own settings: ${verdict ?? 'shown only'}${value}.`;
+};
+
 /** The sentence of a check, computed from its figures: statistic, critical value and its source, n, reading. */
 export const checkSentence = (check: Check): string => {
 	if (check.verdict === 'not assessable') {
@@ -240,7 +250,7 @@ export const checkSentence = (check: Check): string => {
 	}
 	const reading = (special[check.id] ?? plain)(check);
 	const rules = (check.because ?? []).flatMap((code) => becauseWords[code] ?? []);
-	return [reading, ...rules].filter((text) => text !== '').join(' ');
+	return [reading, ...rules, byDefaultText(check)].filter((text) => text !== '').join(' ');
 };
 
 /** The sentence of one part of a check. */

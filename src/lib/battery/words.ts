@@ -51,6 +51,7 @@ export const becauseWords: Readonly<Record<string, string>> = Object.freeze({
 	'does-not-correct': 'The estimated speed does not correct: it is 0 or less, or 2 or more.',
 	'opposite-null-rejected': 'A test of the opposite null rejects at 1 %.',
 	'boundary-crossed': 'The cumulated gap of the new periods has crossed its boundary.',
+	'engle-granger-disagrees': 'Engle-Granger reads otherwise; each keeps its own verdict.',
 	'between-bounds': 'The statistic lies between the bounds: inconclusive.',
 	'autocorrelated-residuals':
 		'The residuals are autocorrelated, which makes this p-value unreliable: at best a query.',

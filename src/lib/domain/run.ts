@@ -48,6 +48,7 @@ export type Override = z.infer<typeof overrideSchema>;
 export const heldSchema = z.strictObject({
 	version: z.string(),
 	constant: z.number(),
+	/** Slope per period, counted from 1 at the first period of this run's sample. */
 	trend: z.number().optional(),
 	slopes: z.array(z.strictObject({ series: z.string(), value: z.number() })),
 	/** Last period of the sample the values were estimated on. */

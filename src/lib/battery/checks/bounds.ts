@@ -104,10 +104,16 @@ export const cointegrationBounds = onModel(id, sources[id]!, (context, model) =>
 		},
 		context.levels.shown
 	)!;
+	const other = context.done('cointegration.engle-granger')?.rejected;
+	const disagrees = other !== undefined && other !== judgement.rejected;
 	return checkOf(id, {
 		...common,
 		...judgement,
 		parts,
-		because: [...judgement.because, ...(inconclusive && !judgement.rejected ? ['between-bounds'] : [])]
+		because: [
+			...(disagrees ? ['engle-granger-disagrees'] : []),
+			...judgement.because,
+			...(inconclusive && !judgement.rejected ? ['between-bounds'] : [])
+		]
 	});
 });
