@@ -8,15 +8,15 @@ import { integrationAdf, integrationKpss, integrationOrder } from './checks/inte
 import { dataIntegrity } from './checks/integrity';
 import { longRunPrecision, longRunRange, longRunSigns } from './checks/long-run';
 import { replicationCoefficients } from './checks/replication';
+import { residualAutocorrelation, residualPortmanteau } from './checks/residual-autocorrelation';
 import {
 	residualArch,
-	residualAutocorrelation,
 	residualFunctionalForm,
 	residualHeteroskedasticity,
-	residualNormality,
-	residualPortmanteau
-} from './checks/residual';
-import { stationarityHeld, stationarityRefit } from './checks/residual-stationarity';
+	residualNormality
+} from './checks/residual-distribution';
+import { stationarityHeld } from './checks/residual-stationarity-held';
+import { stationarityRefit } from './checks/residual-stationarity-refit';
 import { stabilityCusum, stabilityCusumsq, stabilitySupF } from './checks/stability';
 
 /**

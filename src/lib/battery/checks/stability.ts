@@ -17,7 +17,7 @@ import { checkOf, notAssessable, onModel, refusedCheck, tooFew, type Context } f
 import type { Model } from '../model';
 import { sources } from '../sources';
 import { badRejection, notWorseThanQuery } from '../verdict';
-import { underAutocorrelation } from './residual';
+import { underAutocorrelation } from './residual-parts';
 
 const noFit = 'The coefficients were given; this check follows estimates over the sample.';
 

@@ -1,158 +1,18 @@
 import { archLm } from '$lib/econometrics/diagnostics/arch-lm';
-import { breuschGodfrey } from '$lib/econometrics/diagnostics/breusch-godfrey';
 import { breuschPagan } from '$lib/econometrics/diagnostics/breusch-pagan';
 import { jarqueBera } from '$lib/econometrics/diagnostics/jarque-bera';
-import { ljungBox } from '$lib/econometrics/diagnostics/ljung-box';
 import { reset } from '$lib/econometrics/diagnostics/reset';
 import { whiteSpecial } from '$lib/econometrics/diagnostics/white-special';
-import { isRefusal, type Refusal } from '$lib/econometrics/refusal';
-import { ols, type OlsFit } from '$lib/econometrics/regression/ols';
+import { isRefusal } from '$lib/econometrics/refusal';
 import { harveyCollier } from '$lib/econometrics/stability/harvey-collier';
-import { periodsPerYear } from '$lib/domain/period';
 import { linePath } from '$lib/domain/policy';
 import type { Verdict } from '$lib/domain/run';
-import type { Check, Part } from '$lib/domain/run-result';
-import {
-	checkOf,
-	notAssessable,
-	onModel,
-	refusedCheck,
-	refusedPart,
-	tooFew,
-	type Context,
-	type Finding
-} from '../context';
-import { overlapOf } from '../covariance';
-import type { Model } from '../model';
-import { beyondOverlap } from '../overlap';
+import type { Part } from '$lib/domain/run-result';
+import { checkOf, notAssessable, onModel, refusedCheck, refusedPart, tooFew, type Context } from '../context';
 import { sources } from '../sources';
-import { badRejection, notBetterThanQuery, notWorseThanQuery, worst } from '../verdict';
+import { badRejection, notWorseThanQuery } from '../verdict';
 
-/** The regression behind the residuals; given coefficients leave residuals that are projected off the regressors first. */
-const auxiliary = (model: Model): OlsFit | Refusal => model.fit ?? ols(model.residuals, model.design.design);
-
-const projected = (model: Model) => (model.fit ? {} : { residuals: 'projected off the regressors' });
-
-/** Period of the year count, 4 where a year is one period. */
-const yearly = (context: Context): number => {
-	const perYear = periodsPerYear[context.spec.frequency];
-	return perYear === 1 ? 4 : perYear;
-};
-
-/** With autocorrelated residuals the p-values of tests on them are unreliable: at best a query. */
-export const underAutocorrelation = (
-	context: Context,
-	verdict: Verdict
-): { readonly verdict: Verdict; readonly because: readonly string[] } =>
-	context.done('residual.autocorrelation')?.verdict === 'fails'
-		? { verdict: notBetterThanQuery(verdict), because: ['autocorrelated-residuals'] }
-		: { verdict, because: [] };
-
-const levelNames = ['query', 'fails'];
-
-/** Several orders count as one check: the smallest p-value decides. */
-const worseOf = (
-	id: string,
-	parts: readonly Part[],
-	n: number,
-	query: number,
-	common: Omit<Finding, 'verdict'>
-): Check => {
-	const made = parts.filter(({ pValue }) => pValue !== undefined);
-	const refused = parts.find(({ reason }) => reason !== undefined);
-	if (made.length === 0) return notAssessable(id, refused!.reason!, refused!.detail!, { ...common, parts });
-	const decisive = made.reduce((worse, part) => (part.pValue! < worse.pValue! ? part : worse));
-	return checkOf(id, {
-		...common,
-		verdict: worst(made.map(({ verdict }) => verdict!)),
-		statistic: decisive.statistic!,
-		parameters: { ...common.parameters, ...decisive.parameters },
-		pValue: decisive.pValue!,
-		rejected: decisive.pValue! < query,
-		parts,
-		n
-	});
-};
-
-/** Breusch-Godfrey F at order 1 and at a year; the worse counts. */
-export const residualAutocorrelation = onModel(
-	'residual.autocorrelation',
-	sources['residual.autocorrelation']!,
-	(context, model) => {
-		const id = 'residual.autocorrelation';
-		const common = {
-			source: sources[id]!,
-			nullHypothesis: 'no-autocorrelation',
-			lines: ['least', 'first'],
-			levels: levelNames
-		};
-		const overlap = overlapOf(context.spec);
-		if (overlap > 1) return beyondOverlap(id, context, model, overlap, common);
-		const fit = auxiliary(model);
-		if (isRefusal(fit)) return refusedCheck(id, fit, common);
-		const least = context.settings.number(linePath(id, 'least'));
-		const orders = [context.settings.number(linePath(id, 'first')), yearly(context)];
-		const parts = orders.map((order): Part => {
-			const about = `order ${order}`;
-			const test =
-				tooFew(fit.nobs - fit.k - order, least, 'degrees of freedom') ?? breuschGodfrey(fit, order);
-			if (isRefusal(test)) return refusedPart(about, test);
-			return Object.freeze({
-				about,
-				statistic: { name: 'F', value: test.f },
-				parameters: { order, df1: test.df1, df2: test.df2, lm: test.lm, lmP: test.lmP },
-				pValue: test.fP,
-				n: fit.nobs,
-				verdict: badRejection(test.fP, context.levels)
-			});
-		});
-		return worseOf(id, parts, fit.nobs, context.levels.query, { ...common, parameters: projected(model) });
-	}
-);
-
-/** Ljung-Box over one to three years: with lagged dependent variables only a guide, so at most a query. */
-export const residualPortmanteau = onModel(
-	'residual.portmanteau',
-	sources['residual.portmanteau']!,
-	(context, model) => {
-		const id = 'residual.portmanteau';
-		const common = {
-			source: sources[id]!,
-			nullHypothesis: 'no-autocorrelation',
-			lines: ['years', 'least'],
-			levels: ['query']
-		};
-		const n = model.residuals.length;
-		const perLag = context.settings.number(linePath(id, 'least'));
-		const lags = context.settings.numbers(linePath(id, 'years')).map((years) => years * yearly(context));
-		const parts = lags.map((lag): Part => {
-			const about = `${lag} lags`;
-			const test = tooFew(n, perLag * lag, 'rows') ?? ljungBox(model.residuals, lag);
-			if (isRefusal(test)) return refusedPart(about, test);
-			return Object.freeze({
-				about,
-				statistic: { name: 'Q', value: test.lb },
-				parameters: { lags: lag, df: test.df },
-				pValue: test.lbP,
-				n,
-				verdict: notWorseThanQuery(badRejection(test.lbP, context.levels))
-			});
-		});
-		const shown = ljungBox(model.residuals, Math.min(Math.max(...lags), Math.floor(n / 2)));
-		const check = worseOf(id, parts, n, context.levels.query, common);
-		return isRefusal(shown)
-			? check
-			: Object.freeze({
-					...check,
-					plot: Object.freeze({
-						kind: 'acf' as const,
-						acf: Array.from(shown.acf),
-						bound: 1.959963984540054 / Math.sqrt(n)
-					})
-				});
-	}
-);
-
+import { auxiliary, levelNames, projected, underAutocorrelation, worseOf } from './residual-parts';
 /** Departures of the variance cost no more than the standard errors: a query, and none where those are robust. */
 const ofVariance = (context: Context, p: number): { verdict: Verdict; because: readonly string[] } => {
 	const plain = badRejection(p, context.levels);

@@ -1,13 +1,10 @@
 import {
 	residualStationarity,
-	type GapOrigin,
 	type ResidualStationarity
 } from '$lib/econometrics/cointegration/residual-stationarity';
 import { gapBoundary } from '$lib/econometrics/cointegration/gap-boundary';
-import { staticDeterministic } from '$lib/econometrics/error-correction/companions';
-import { longRunDummies, type Relation } from '$lib/econometrics/error-correction/equation';
+import type { Relation } from '$lib/econometrics/error-correction/equation';
 import { gapFrom } from '$lib/econometrics/error-correction/gap';
-import { staticRegression } from '$lib/econometrics/error-correction/static-regression';
 import { isRefusal, type Refusal } from '$lib/econometrics/refusal';
 import { periodIndex, periodsPerYear } from '$lib/domain/period';
 import { linePath } from '$lib/domain/policy';
@@ -20,7 +17,6 @@ import {
 	refusedCheck,
 	refusedPart,
 	tooFew,
-	type AnyCheck,
 	type Context,
 	type Finding
 } from '../context';
@@ -28,95 +24,9 @@ import type { Model } from '../model';
 import { residualLagsOf } from '../relation';
 import type { ModelSample } from '../sample';
 import { sources } from '../sources';
-import { criticalAt, doesNotCorrect, goodRejection } from '../verdict';
+import { criticalAt } from '../verdict';
 
-const evidence = (test: ResidualStationarity) => ({
-	statistic: { name: 'tau', value: test.stat },
-	parameters: {
-		coefficients: test.origin.coefficients,
-		...(test.origin.coefficients === 'held' && { overlap: test.origin.overlap }),
-		deterministic: test.regressionDet,
-		tableDeterministic: test.table.det,
-		tableVariables: test.table.variables,
-		tableObservations: test.table.observations,
-		lags: test.lags,
-		rule: test.search?.rule ?? 'given'
-	},
-	...(test.pvalue !== null && { pValue: test.pvalue }),
-	...(test.critical && {
-		criticalValues: (['1%', '5%', '10%'] as const).map((level) => ({ level, value: test.critical![level] }))
-	}),
-	n: test.nobs
-});
-
-const lambdaOf = (context: Context): number | undefined =>
-	isRefusal(context.model) ? undefined : context.model.adjustment.lambda;
-
-const judged = (
-	id: string,
-	context: Context,
-	test: ResidualStationarity,
-	opposed: boolean,
-	rest: Omit<Finding, 'verdict'>
-): Check => {
-	const critical = criticalAt(test.critical, context.levels.shown);
-	const lambda = lambdaOf(context);
-	const judgement = goodRejection(
-		{
-			passes: critical === undefined ? undefined : test.stat < critical,
-			...(test.pvalue !== null && { p: { value: test.pvalue, asymptotic: true } }),
-			refuted: lambda !== undefined && doesNotCorrect(lambda),
-			opposed
-		},
-		context.levels.shown
-	);
-	const common = { ...rest, ...evidence(test) };
-	return judgement
-		? checkOf(id, { ...common, ...judgement })
-		: notAssessable(
-				id,
-				'table',
-				'No critical value exists for a relation with a step or without a constant.',
-				common
-			);
-};
-
-/** Unit root in the gap of the relation estimated on this very sample. */
-export const stationarityRefit: AnyCheck = (context) => {
-	const id = 'residual.stationarity-refit';
-	const rest = {
-		source: sources[id]!,
-		nullHypothesis: 'unit-root-in-gap',
-		lines: ['least'],
-		levels: ['shown']
-	};
-	if (isRefusal(context.sample)) return refusedCheck(id, context.sample, rest);
-	if (context.spec.estimator.kind === 'elsewhere')
-		return notAssessable(id, 'given', 'The relation was given; this test estimates it afresh.', rest);
-	const { equation, sample } = context.sample;
-	const drivers = equation.longRun.drivers.length;
-	// The tables are for least-squares residuals of the levels, so that is the gap tested, whatever the estimator.
-	const fit = staticRegression(equation, sample);
-	if (isRefusal(fit)) return refusedCheck(id, fit, rest);
-	const origin: GapOrigin = {
-		coefficients: 'estimated-here',
-		det: staticDeterministic(equation),
-		drivers,
-		step: longRunDummies(equation).some(({ kind }) => kind === 'step')
-	};
-	const test = residualStationarity(fit.resid, origin, residualLagsOf(context, sample.T));
-	if (isRefusal(test)) return refusedCheck(id, test, rest);
-	const least = Math.max(context.settings.number(linePath(id, 'least')), 10 + 2 * test.lags + 5 * drivers);
-	const few = tooFew(sample.T, least, 'periods');
-	if (few) return refusedCheck(id, few, rest);
-	const { opposite } = context;
-	return judged(id, context, test, opposite?.rejects ?? false, {
-		...rest,
-		levels: ['shown', 'against'],
-		...(opposite && { parts: [opposite.part] })
-	});
-};
-
+import { evidence, judged } from './gap-test';
 interface Held {
 	readonly relation: Relation;
 	/** First element of the sample after the one the values were estimated on. */
