@@ -4,7 +4,8 @@ import { limits } from '$lib/domain/lineage';
 import { readCsv } from './csv';
 import { detect, type Media } from './detect';
 import { Rejected, type Question } from './rejected';
-import { readTable, type LeftOutColumn } from './table';
+import type { LeftOutColumn } from './column-reader';
+import { readTable } from './table';
 import { readWorkbook } from './xlsx';
 
 export interface ParseInput {

@@ -132,9 +132,9 @@ export const vintageFile = (
 	readonly media: 'csv' | 'xlsx';
 	readonly sha256: string;
 } => {
+	requireReading(ctx, ctx.read, actor, parent(ref));
 	const row = ctx.read.first(vintageByRef(ctx.read.q, ref));
 	if (!row) throw new Absent(noSuchPage);
-	requireReading(ctx, ctx.read, actor, row.dataset);
 	const bytes = ctx.blobs.get(row.sha256);
 	if (!bytes) throw new Absent('The bytes of this vintage are not in the register.');
 	return { bytes, fileName: row.file_name, media: row.media, sha256: row.sha256 };
