@@ -98,8 +98,10 @@ const isWho = (who: Who, facts: Facts): boolean => {
 const refusal = (rule: string, words: string, visible = true): Answer =>
 	Object.freeze({ allowed: false, rule, words, visible });
 
-const whoMay = (action: Action, purpose: Purpose | undefined): readonly Who[] => {
-	const { who } = permissions[action];
+/** Those of the row; when the first of a pair has signed, those who may sign second. */
+const whoMay = (action: Action, { purpose, first }: Facts): readonly Who[] => {
+	const { who, second } = permissions[action];
+	if (first !== undefined && second) return second;
 	return 'planned' in who ? (purpose ? who[purpose] : []) : who;
 };
 
@@ -128,7 +130,7 @@ export const authorize = (action: Action, facts: Facts): Answer => {
 	if (gate) return gate;
 	const rule = permissions[action];
 	let refused: Answer | undefined;
-	for (const who of whoMay(action, facts.purpose)) {
+	for (const who of whoMay(action, facts)) {
 		if (!isWho(who, facts)) continue;
 		const breach = separation(action, who, facts);
 		if (breach) {
