@@ -1,5 +1,6 @@
 import { roleWord } from '$lib/domain/roles';
 import { serve } from '$lib/server/http/serve';
+import { allow } from '$lib/server/people/allow';
 import { waitingProposals } from '$lib/server/people/listing';
 import { reviewsDue } from '$lib/server/register/reviews';
 import { waitingInRegister } from '$lib/server/register/waiting';
@@ -12,6 +13,7 @@ const proposalWords = (act: string, role: string | null, name: string, by: strin
 
 export const load: PageServerLoad = (event) =>
 	serve(event, (ctx, actor) => {
+		allow(ctx, ctx.read, actor, 'register.read');
 		const items = waitingInRegister(ctx, actor).map(({ model, name, what, href, overdue = false }) => ({
 			about: `${model} ${name}`,
 			what,

@@ -12,6 +12,9 @@ export interface Answered {
 	readonly issues?: Invalid['issues'];
 }
 
+/** What the asker may not know of is answered word for word like what does not exist. */
+const nothing = 'There is nothing under this address or reference.';
+
 /**
  * Turns a known fault into its answer, and enters a refusal in the log.
  * Anything else is thrown on: the one error door (handleError) gives it an id.
@@ -19,14 +22,14 @@ export interface Answered {
 export const answered = (event: RequestEvent, fault: unknown): Answered => {
 	if (fault instanceof Invalid)
 		return { status: 400, title: 'Not valid', detail: fault.message, issues: fault.issues };
-	if (fault instanceof Absent) return { status: 404, title: 'Not found', detail: fault.message };
+	if (fault instanceof Absent) return { status: 404, title: 'Not found', detail: nothing };
 	if (fault instanceof Conflict) return { status: 409, title: 'Conflict', detail: fault.message };
 	if (fault instanceof Refused) {
 		const { ctx, actor } = event.locals;
 		if (actor) recordRefusal(ctx, actor, fault);
 		return fault.visible
 			? { status: 403, title: 'Refused', detail: fault.message, rule: fault.rule }
-			: { status: 404, title: 'Not found', detail: 'There is no such page.' };
+			: { status: 404, title: 'Not found', detail: nothing };
 	}
 	throw fault;
 };

@@ -24,22 +24,37 @@ const groupOf = (routeId: string | null): Group => {
 	return routeId.startsWith('/api/') ? 'api' : 'none';
 };
 
-const plain = (status: number, words: string): Stopped => ({ response: new Response(words, { status }) });
+/** A sentence, in the dialect of the address: a problem document under /api, else plain text. */
+const stop = ({ url }: RequestEvent, status: number, title: string, detail: string): Stopped => ({
+	response: url.pathname.startsWith('/api/')
+		? problem({ status, title, detail })
+		: new Response(detail, { status })
+});
+
+const otherSite = 'This request came from another site; open the page again and repeat it.';
+
+/** A token is for the API, and is sent alone: a cookie beside it would say who acts a second time. */
+const tokenFault = (event: RequestEvent): Stopped | undefined => {
+	if (!bearer(event.request)) return undefined;
+	if (!event.url.pathname.startsWith('/api/'))
+		return stop(event, 400, 'No token here', 'A token opens /api/v1 only.');
+	return event.request.headers.has('cookie')
+		? stop(event, 400, 'Two credentials', 'Send a token or a cookie, not both.')
+		: undefined;
+};
 
 /** Identifies the asker and closes what is not open to them; by group, closed by default. */
 export const guard = async (event: RequestEvent, identify: Identify): Promise<Stopped | undefined> => {
 	const { ctx } = event.locals;
 	const group = groupOf(event.route.id);
-	if (group === 'none') return plain(404, 'There is no such page.');
-	if (!sameOrigin(event.request, ctx.config.origin))
-		return plain(403, 'This request came from another site; open the page again and repeat it.');
+	const nowhere = event.route.id === null && event.url.pathname.startsWith('/api/');
+	if (group === 'none' || nowhere) return stop(event, 404, 'Not found', 'There is no such page.');
+	if (!sameOrigin(event.request, ctx.config.origin)) return stop(event, 403, 'Refused', otherSite);
 	// A prefetch must not write the entry that a read of evidence makes.
 	if (/prefetch/.test(event.request.headers.get('sec-purpose') ?? ''))
 		return { response: new Response(null, { status: 204 }) };
-	if (bearer(event.request)) {
-		if (group !== 'api') return plain(400, 'A token opens /api/v1 only.');
-		if (event.request.headers.has('cookie')) return plain(400, 'Send a token or a cookie, not both.');
-	}
+	const fault = tokenFault(event);
+	if (fault) return fault;
 	event.locals.actor = group === 'open' ? null : await identify(ctx, event);
 	if (event.locals.actor) return undefined;
 	if (group === 'desk')

@@ -39,7 +39,7 @@ export interface Preview {
 
 const waitsFor = 24 * 60 * 60 * 1000;
 /** Longest time for a reading, the wait for a thread included. */
-const readingTime = 60_000;
+const readingTime = 30_000;
 /** A person's uploads that wait, together. */
 const mostWaiting = 8 * limits.bytes;
 

@@ -11,6 +11,8 @@ export const cancelRun = (ctx: Ctx, actor: Actor, ref: string): void => {
 	ctx.write((tx) => {
 		const row = tx.first(runByRef(tx.q, ref));
 		if (!row) throw new Absent(`There is no run ${ref}.`);
+		// Whoever may not read the run is not told that there is one.
+		allow(ctx, tx, actor, 'run.read', { model: row.model });
 		const starter = row.requested_by as PersonId;
 		const grant = allow(ctx, tx, actor, 'run.cancel', { model: row.model, starter });
 		if (row.state !== 'requested')

@@ -49,6 +49,7 @@ export const listRuns = (
 	{ before, limit = 50, ...filter }: RunListing = {},
 	handle: Handle = ctx.read
 ): RunPage => {
+	allow(ctx, handle, actor, 'register.read');
 	if (filter.model !== undefined) allow(ctx, handle, actor, 'run.read', { model: filter.model });
 	const size = Math.min(Math.max(1, limit), mostRows);
 	const bound = filter.model === undefined ? boundTo(ctx, handle, actor) : {};
