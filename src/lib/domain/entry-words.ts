@@ -7,7 +7,7 @@ import { roleWord } from './roles';
 export type NameOf = (id: PersonId | 'system' | 'cli') => string;
 
 type Words = {
-	readonly [T in EventType]?: (payload: Payload<T>, name: (person: string) => string) => string;
+	readonly [T in EventType]: (payload: Payload<T>, name: (person: string) => string) => string;
 };
 
 const list = (items: readonly string[]): string =>
@@ -16,7 +16,7 @@ const count = (n: number, noun: string): string => `${n} ${noun}${n === 1 ? '' :
 const day = (instant: string): string => instant.slice(0, 10);
 
 /** What people do in their own name is said without it. */
-const own: Words = {
+const own: Partial<Words> = {
 	'person.enrolled': () => 'enrolled',
 	'credential.enrolled': ({ kind }) => `enrolled a ${kind}`,
 	'credential.revoked': () => 'revoked a passkey of their own',

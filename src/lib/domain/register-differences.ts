@@ -1,6 +1,6 @@
 /** One field that differs; a side is absent where it has no such field. */
 export interface FieldDifference {
-	/** Path in words of the specification: `longRun.drivers.unemp.sign`. */
+	/** The field's name, or its path where values hold values. */
 	readonly field: string;
 	readonly before?: unknown;
 	readonly after?: unknown;
@@ -41,6 +41,6 @@ const walk = (field: string, before: unknown, after: unknown): FieldDifference[]
 	return [{ field, ...(before !== undefined && { before }), ...(after !== undefined && { after }) }];
 };
 
-/** Every field that differs between two specifications; items of lists are matched by their names. */
+/** Every field that differs between two values; items of lists are matched by their names. */
 export const fieldDifferences = (before: unknown, after: unknown): readonly FieldDifference[] =>
 	walk('', before, after);

@@ -204,7 +204,7 @@ describe('versions', () => {
 		).toThrow(expect.objectContaining({ issues: [expect.objectContaining({ pointer: '/claimed' })] }));
 	});
 
-	it('differ field by field, lists matched by name', () => {
+	it('differ field by field, in words, series matched by name', () => {
 		const before = draft();
 		const series = [...lossOnUnemployment().series];
 		const after = draft({
@@ -218,16 +218,19 @@ describe('versions', () => {
 				drivers: [{ series: 'unemp', lags: [0, 2], sign: '+' }],
 				constant: false
 			},
-			sample: { from: '2001-Q1', to: '2019-Q4' }
+			sample: { from: '2001-Q1', to: '2019-Q4' },
+			claimed
 		});
+		// What both have comes in the order of the specification, what is new after it.
 		expect(compareVersions(bank.ctx, owner, before, after)).toEqual([
-			{ field: 'sample.from', before: '2000-Q1', after: '2001-Q1' },
-			{ field: 'series.gdp.column', after: 'gdp' },
-			{ field: 'series.gdp.name', after: 'gdp' },
-			{ field: 'series.gdp.transform', after: [{ step: 'log' }] },
-			{ field: 'series.gdp.unit', after: 'index' },
-			{ field: 'shortRun.drivers.unemp.lags', before: [0], after: [0, 2] },
-			{ field: 'shortRun.own', before: [1], after: [1, 2] }
+			{ field: 'short run, lags of Δloss', before: '1', after: '1, 2' },
+			{ field: 'short run, lags of Δunemp', before: '0', after: '0, 2' },
+			{ field: 'sample from', before: '2000-Q1', after: '2001-Q1' },
+			{ field: 'series gdp, column', after: 'gdp' },
+			{ field: 'series gdp, unit', after: 'index' },
+			{ field: 'series gdp, transforms', after: 'log' },
+			{ field: 'claimed, source', after: 'Development paper, table 4' },
+			{ field: 'claimed, gap(t−1)', after: '−0.3270 (0.077)' }
 		]);
 	});
 });

@@ -90,10 +90,10 @@ describe('a run in its thread', () => {
 		const comparison = compareRuns(runEvidence(bank.ctx, owner, before), runEvidence(bank.ctx, owner, after));
 		expect(comparison.digest).toBe('different');
 		expect(comparison.causes).toEqual([
-			{ cause: 'sample', changes: [{ field: 'from', before: '2000-Q1', after: '2005-Q1' }] },
+			{ cause: 'sample', changes: [{ field: 'sample from', before: '2000-Q1', after: '2005-Q1' }] },
 			{
 				cause: 'specification',
-				changes: [{ field: 'shortRun.drivers.unemp.lags', before: [0], after: [0, 1] }]
+				changes: [{ field: 'short run, lags of Δunemp', before: '0', after: '0, 1' }]
 			},
 			{ cause: 'settings', changes: [{ field: 'checks/adjustment.half-life/longest', after: 1 }] }
 		]);

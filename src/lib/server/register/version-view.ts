@@ -1,6 +1,7 @@
 import type { Actor } from '$lib/domain/actor';
 import { parent } from '$lib/domain/references';
 import { fieldDifferences, type FieldDifference } from '$lib/domain/register-differences';
+import { readableSpecification } from '$lib/domain/register-readable';
 import { canStep, type VersionState } from '$lib/domain/register-states';
 import type { Specification } from '$lib/domain/specification';
 import { allow, may } from '$lib/server/people/allow';
@@ -88,6 +89,6 @@ export const compareVersions = (
 	handle: Handle = ctx.read
 ): readonly FieldDifference[] =>
 	fieldDifferences(
-		versionOf(ctx, actor, before, handle).specification,
-		versionOf(ctx, actor, after, handle).specification
+		readableSpecification(versionOf(ctx, actor, before, handle).specification),
+		readableSpecification(versionOf(ctx, actor, after, handle).specification)
 	);

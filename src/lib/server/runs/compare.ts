@@ -1,4 +1,5 @@
 import { fieldDifferences, type FieldDifference } from '$lib/domain/register-differences';
+import { readableSpecification, sampleFields } from '$lib/domain/register-readable';
 import { termName } from '$lib/domain/register-term-names';
 import type { Actor } from '$lib/domain/actor';
 import type { RunRequest, Verdict } from '$lib/domain/run';
@@ -77,16 +78,19 @@ export interface RunComparison {
 }
 
 const causesOf = (a: RunEvidence, b: RunEvidence): CauseOfDifference[] => {
-	const { sample: sampleA, ...restA } = a.request.specification;
-	const { sample: sampleB, ...restB } = b.request.specification;
+	const specification = fieldDifferences(
+		readableSpecification(a.request.specification),
+		readableSpecification(b.request.specification)
+	);
+	const ofSample = ({ field }: FieldDifference): boolean => sampleFields.includes(field);
 	const settings = ({ request }: RunEvidence) =>
 		Object.fromEntries(request.settings.map(({ setting, value }) => [setting, value]));
 	const data = ({ view }: RunEvidence) => ({ vintage: view.vintage, file: view.file });
 	const pairs: Record<Cause, readonly FieldDifference[]> = {
 		// The table decides; two files may hold the same numbers.
 		data: a.request.vintage === b.request.vintage ? [] : fieldDifferences(data(a), data(b)),
-		sample: fieldDifferences(sampleA, sampleB),
-		specification: fieldDifferences(restA, restB),
+		sample: specification.filter(ofSample),
+		specification: specification.filter((difference) => !ofSample(difference)),
 		settings: fieldDifferences(settings(a), settings(b)),
 		policy: fieldDifferences({ policy: a.request.policy }, { policy: b.request.policy }),
 		tier: fieldDifferences({ tier: a.request.tier }, { tier: b.request.tier }),
