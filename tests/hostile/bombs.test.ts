@@ -188,6 +188,7 @@ describe('the closed list of codes', () => {
 		'column-unknown',
 		'file-name',
 		'took-too-long',
+		'too-much-memory',
 		'request'
 	];
 	/** Codes of the files that are made here. */

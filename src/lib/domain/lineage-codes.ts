@@ -78,6 +78,8 @@ export const sentences = {
 	'file-name': (name: string) => `File name "${name}" holds a character that cannot be shown safely.`,
 	request: (what: string) => `${what}.`,
 	'column-unknown': (name: string) => `The file has no column ${name}.`,
+	'too-much-memory': () =>
+		'Reading the file takes too much memory. Give a smaller file, or save the one sheet as CSV.',
 	'took-too-long': (seconds: number) =>
 		`Reading the file took more than ${seconds} seconds. Give a smaller file.`
 } as const;

@@ -8,7 +8,7 @@ import { dataOfModel, vintageFile, vintageView } from '$lib/server/lineage/vinta
 
 import { entryTexts, replay } from '$lib/server/log/replay';
 import { registerModel } from '$lib/server/register/model';
-import { afterEach, beforeEach, describe, expect, it } from 'vitest';
+import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
 import { modelInput } from '../register/bank';
 import { bytesOf, confirmation, count, lastFolio, openDesk, typesAfter, type Desk } from './desk';
 
@@ -117,6 +117,31 @@ describe('a vintage', () => {
 		expect(entry?.body).toContain('"code":"period-twice"');
 		expect(entry?.body).not.toContain('Pell');
 		expect([count(desk.ctx, 'blob'), count(desk.ctx, 'upload')]).toEqual([blobs, 0]);
+	});
+
+	it('refuses a file whose reading ends its thread, and says why', async () => {
+		const outOfMemory = Object.assign(new Error('heap'), { code: 'ERR_WORKER_OUT_OF_MEMORY' });
+		const ctx = { ...desk.ctx, pool: { ...desk.ctx.pool, parse: () => Promise.reject(outOfMemory) } };
+		const before = lastFolio(desk.ctx);
+		const sent = { model: desk.model, bytes: bytesOf(text), fileName: 'x.csv' };
+		expect(await codes(storeUpload(ctx, desk.owner, sent))).toEqual(['too-much-memory']);
+		expect(typesAfter(desk.ctx, before)).toEqual(['upload.refused']);
+		const broken = {
+			...ctx,
+			pool: { ...ctx.pool, parse: () => Promise.reject(new Error('a fault of ours')) }
+		};
+		await expect(storeUpload(broken, desk.owner, sent)).rejects.toThrow('a fault of ours');
+		expect(count(desk.ctx, 'upload')).toBe(0);
+	});
+
+	it('refuses a reading that takes too long', async () => {
+		vi.spyOn(AbortSignal, 'timeout').mockReturnValueOnce(AbortSignal.abort());
+		const ctx = {
+			...desk.ctx,
+			pool: { ...desk.ctx.pool, parse: () => Promise.reject(new Error('aborted')) }
+		};
+		const sent = { model: desk.model, bytes: bytesOf(text), fileName: 'x.csv' };
+		expect(await codes(storeUpload(ctx, desk.owner, sent))).toEqual(['took-too-long']);
 	});
 
 	it('refuses the same bytes again', async () => {

@@ -43,12 +43,15 @@ const readingTime = 30_000;
 /** A person's uploads that wait, together. */
 const mostWaiting = 8 * limits.bytes;
 
-/** Reads a file in a worker thread; a reading that takes too long ends with its thread. */
+/** Reads a file in a worker thread; a reading that takes too long or too much memory ends with its thread. */
 export const parsed = async (ctx: Ctx, bytes: Uint8Array, choices: Choices): Promise<ParseOutcome> => {
 	const signal = AbortSignal.timeout(readingTime);
 	try {
 		return await ctx.pool.parse({ bytes, choices }, { signal });
 	} catch (error) {
+		// The thread ended at its memory limit; the server itself is unharmed.
+		if ((error as NodeJS.ErrnoException).code === 'ERR_WORKER_OUT_OF_MEMORY')
+			return { state: 'refused', issues: [uploadIssue('too-much-memory', [])] };
 		if (!signal.aborted) throw error;
 		return { state: 'refused', issues: [uploadIssue('took-too-long', [readingTime / 1000])] };
 	}
