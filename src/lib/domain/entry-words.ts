@@ -25,6 +25,7 @@ const own: Partial<Words> = {
 	'recovery-code.used': ({ left }) => `used a recovery code; ${left} left`,
 	'session.opened': () => 'signed in',
 	'session.closed': ({ reason }) => (reason === 'signed out' ? 'signed out' : `left a session: ${reason}`),
+	'sessions.ended': () => 'ended every session of their own',
 	'token.created': ({ token, scopes }) => `made token ${token} for ${list(scopes)}`
 };
 
@@ -61,6 +62,7 @@ const words: Words = {
 	'recovery-code.used': ({ person, left }, name) => `used a recovery code of ${name(person)}; ${left} left`,
 	'session.opened': ({ person }, name) => `signed in ${name(person)}`,
 	'session.closed': ({ person, reason }, name) => `ended a session of ${name(person)}: ${reason}`,
+	'sessions.ended': ({ person }, name) => `ended every session of ${name(person)}`,
 	'sign-in.failed': ({ way, reason }) => `refused a sign-in by ${way}: ${reason}`,
 	'access.refused': ({ action, rule, subject }) =>
 		`was refused ${action}${subject ? ` on ${subject}` : ''} by rule ${rule}`,

@@ -1,11 +1,15 @@
 import { Conflict, Invalid } from '$lib/domain/faults';
+import { verifierText } from '$lib/chain/verifier-key';
 import { rootOf } from '$lib/chain/merkle';
 import type { Projectors } from '$lib/server/context';
+import { presentTriggers } from '$lib/server/db/gates';
 import { openLog, type LogOptions } from '$lib/server/log/open';
+import { verifyRegister } from '$lib/server/log/verify';
 import { StartFault } from '$lib/server/start-fault';
 import { chmodSync, readFileSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { generateKeyPairSync } from 'node:crypto';
 import { join } from 'node:path';
+import Sqlite from 'better-sqlite3';
 import { afterEach, beforeEach, describe, expect, test, vi } from 'vitest';
 import { testRegister, type TestRegister } from '../../support/register';
 import { enter, enterIn, registered } from './history';
@@ -170,6 +174,75 @@ describe('checkpoints', () => {
 		} finally {
 			vi.useRealTimers();
 		}
+	});
+});
+
+test('verify sees one state, though entries are written while it looks', async () => {
+	registered(register, 'M-001');
+	const { log, projectors } = register.ctx;
+	const looking = verifyRegister({
+		file: join(register.folder, 'keelbook.db'),
+		key: verifierText(log.verifier),
+		projectors
+	});
+	registered(register, 'M-002');
+	const { faults, entries } = await looking;
+	expect(faults).toEqual([]);
+	expect(entries).toBe(log.frontier().size - 1);
+});
+
+describe('a damaged file is not served', () => {
+	const opening = async (change: string): Promise<unknown> => {
+		registered(register, 'M-001');
+		register.opened.close();
+		closed = true;
+		const file = join(register.folder, 'keelbook.db');
+		const db = new Sqlite(file);
+		db.pragma('foreign_keys = off');
+		for (const name of presentTriggers(db).keys()) db.exec(`drop trigger ${name}`);
+		db.exec(change);
+		db.close();
+		const { config, now, projectors } = register.ctx;
+		const { origin: address, institution, demo, logKeyFile: keyFile } = config;
+		try {
+			(await openLog({ file, keyFile, address, institution, demo, projectors, now })).close();
+			return 'opened';
+		} catch (fault) {
+			return fault instanceof StartFault ? [fault.exitCode, fault.message] : fault;
+		} finally {
+			rmSync(register.folder, { recursive: true });
+		}
+	};
+
+	test('an untouched one is', async () => expect(await opening('select 1')).toBe('opened'));
+
+	test.each([
+		[
+			'a byte of an entry',
+			`update entry set body = replace(body, 'Retail', 'Retain') where seq = 1`,
+			'the bytes of E-1'
+		],
+		['an entry lost', 'delete from entry where seq = 1', "the log's head says 2 entries"],
+		['E-0 lost', 'delete from entry where seq = 0', 'E-0 is missing'],
+		['the head moved', 'update log_head set size = 3', "the log's head says 3 entries"],
+		['the gate left open', 'insert into current_entry values (1)', 'an entry was left open'],
+		[
+			'the signed tree changed',
+			'update node set hash = zeroblob(32) where pos = 2',
+			'the tree is not the one signed'
+		],
+		[
+			'a signature changed',
+			`update checkpoint set note = replace(note, substr(note, -20, 8), 'AAAAAAAA')`,
+			'checkpoint 2: '
+		],
+		[
+			'signed entries cut off',
+			'delete from entry where seq = 1; update log_head set size = 1',
+			'2 entries were signed'
+		]
+	])('%s', async (_, change, words) => {
+		expect(await opening(change)).toEqual([65, expect.stringContaining(words)]);
 	});
 });
 

@@ -55,3 +55,7 @@ const about = (q: Q, refs: readonly string[]) =>
 
 export const checkpointAt = (q: Q, size: number) =>
 	q.selectFrom('checkpoint').select('size').where('size', '=', size);
+
+export const newestFolio = (q: Q) => q.selectFrom('entry').select('seq').orderBy('seq', 'desc').limit(1);
+
+export const openGates = (q: Q) => q.selectFrom('current_entry').select('seq').limit(1);

@@ -1,6 +1,7 @@
 import { system } from '$lib/domain/actor';
 import type { Entry } from '$lib/domain/entry';
 import type { EventType } from '$lib/domain/events';
+import type Sqlite from 'better-sqlite3';
 import { existsSync } from 'node:fs';
 import type { Blobs, Ctx, Projectors } from '../context';
 import { raiseGates } from '../db/gates';
@@ -10,12 +11,14 @@ import { openReader, openWriter } from '../db/open';
 import { StartFault } from '../start-fault';
 import { openBlobs } from './blobs';
 import { signHead } from './checkpoints';
+import { logHead } from './head';
 import { makeKey, readKey, type LogKey } from './keys';
 import type { Log } from './log';
 import { entryAt } from './log.queries';
 import { verifierOfLog } from './opening';
 import { record } from './record';
 import { scheduleCheckpoints } from './schedule';
+import { checkAtStart } from './start-checks';
 import { openStore, type Store } from './store';
 
 export interface LogOptions {
@@ -63,16 +66,30 @@ const writeOpening = (store: Store, key: LogKey, options: LogOptions): void => {
 	);
 };
 
+/** The text of E-0, once the log has one. */
+const openingOf = (from: Handle): string | undefined =>
+	from.first<{ body: string }>(entryAt(from.q, 0))?.body;
+
+/** Tables, gates, then what the file holds: it is looked at before anything is written to it. */
+const prepare = async (sqlite: Sqlite.Database): Promise<void> => {
+	await migrate(sqlite);
+	raiseGates(sqlite);
+	const from = handle(sqlite);
+	const opening = openingOf(from);
+	if (opening !== undefined) checkAtStart(from, verifierOfLog(opening));
+	else if (logHead(from).size > 0) throw new StartFault(65, 'The register is damaged: E-0 is missing.');
+};
+
 /**
  * Opens a register's file: settings, tables, gates, the log; a new register gets its key and E-0.
- * @throws StartFault 78 when the key is not the one E-0 names, 70 when a setting does not take, 76 for a newer file.
+ * @throws StartFault 65 for a damaged file, 70 when a setting does not take, 76 for a newer file, 78 when the key is not
+ * the one E-0 names.
  */
 export const openLog = async (options: LogOptions): Promise<OpenedLog> => {
 	const { file, keyFile, projectors, now } = options;
 	const sqlite = openWriter(file);
 	try {
-		await migrate(sqlite);
-		raiseGates(sqlite);
+		await prepare(sqlite);
 		let settled: (types: readonly EventType[]) => void = () => undefined;
 		const store = openStore(sqlite, projectors, now, (types) => settled(types));
 		const fresh = store.frontier().size === 0;
@@ -80,7 +97,7 @@ export const openLog = async (options: LogOptions): Promise<OpenedLog> => {
 		if (fresh) writeOpening(store, key, options);
 		const reader = openReader(file);
 		const read = handle(reader);
-		const opening = read.first<{ body: string }>(entryAt(read.q, 0))!.body;
+		const opening = openingOf(read)!;
 		const verifier = verifierOfLog(opening);
 		if (!verifier.publicKey.equals(key.publicKey))
 			throw new StartFault(78, `The log key ${keyFile} is not the one that E-0 names`);
@@ -88,24 +105,22 @@ export const openLog = async (options: LogOptions): Promise<OpenedLog> => {
 		const schedule = scheduleCheckpoints(signCheckpoint);
 		settled = schedule.settled;
 		if (fresh) signCheckpoint();
+		const { frontier, append, write } = store;
 		return Object.freeze({
 			read,
-			write: store.write,
-			log: Object.freeze({
-				origin: verifier.name,
-				verifier,
-				frontier: store.frontier,
-				append: store.append,
-				signCheckpoint
-			}),
+			write,
+			log: Object.freeze({ origin: verifier.name, verifier, frontier, append, signCheckpoint }),
 			blobs: openBlobs(read),
 			opening: JSON.parse(opening) as Entry<'log.opened'>,
 			fresh,
 			close: () => {
 				schedule.stop();
-				signCheckpoint();
-				reader.close();
-				sqlite.close();
+				try {
+					signCheckpoint();
+				} finally {
+					reader.close();
+					sqlite.close();
+				}
 			}
 		});
 	} catch (cause) {

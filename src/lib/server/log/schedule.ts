@@ -4,13 +4,7 @@ import type { EventType } from '$lib/domain/events';
 const longest = 60_000;
 
 /** After these a checkpoint follows at once. */
-const atOnce: ReadonlySet<string> = new Set([
-	'log.opened',
-	'policy.adopted',
-	'role.granted',
-	'export.made',
-	'decision.signed'
-]);
+const atOnce: ReadonlySet<EventType> = new Set(['log.opened', 'policy.adopted', 'role.granted']);
 
 /** Decides when the head is signed: at once after weighty entries, otherwise a little later, many entries together. */
 export const scheduleCheckpoints = (
