@@ -15,18 +15,25 @@ const words: Readonly<Record<Delimiter, string>> = {
 };
 
 const sampleLines = 200;
+/** Enough lines to judge by, unless they are very long; the sample is parsed once for each candidate. */
+const sampleCharacters = 256 * 1024;
 
-/** The first 200 lines, counting line ends outside of quotes only. */
+/** The first 200 lines, fewer where they are long, counting line ends outside of quotes only. */
 const sample = (text: string): string => {
 	let quoted = false;
 	let lines = 0;
+	let end = 0;
 	for (let i = 0; i < text.length; i++) {
 		const character = text[i];
 		if (character === '"') quoted = !quoted;
-		else if (!quoted && (character === '\n' || (character === '\r' && text[i + 1] !== '\n')))
-			if (++lines === sampleLines) return text.slice(0, i);
+		else if (!quoted && (character === '\n' || (character === '\r' && text[i + 1] !== '\n'))) {
+			end = i;
+			if (++lines === sampleLines) break;
+		}
+		if (i > sampleCharacters && lines > 1) break;
+		if (i === text.length - 1) end = text.length;
 	}
-	return text;
+	return text.slice(0, end);
 };
 
 const records = (text: string, delimiter: Delimiter): string[][] | undefined => {
