@@ -4,9 +4,9 @@ import { checkSentence, checkTitle } from '$lib/battery/sentences';
 import { groupTitles, nullWords } from '$lib/battery/words';
 import type { Verdict } from '$lib/domain/run';
 import type { Check, Part, RunResult } from '$lib/domain/run-result';
-import { criticalOf, type Critical } from './critical';
-import { figure, pWords } from './figures';
-import { parameterWords } from './parameters';
+import { criticalOf, criticalOfPart, type Critical } from './critical';
+import { aligned, pWords, reading, tied } from './figures';
+import { codeWords, parameterWords } from './parameters';
 
 /** The figures of a check, or of one of its parts, as a table shows them. */
 export interface Figures {
@@ -56,24 +56,27 @@ const familyGroup = 'family';
 
 export const anchorOf = (id: string): string => `check-${id.replaceAll('.', '-')}`;
 
-function figuresOf(of: Check | Part): Figures {
+function figuresOf(of: Check | Part, critical: Critical | null): Figures {
 	const value = of.statistic?.value ?? null;
 	return {
-		statistic: value === null ? null : figure(value),
+		statistic: value === null ? null : reading(value),
 		statisticName: of.statistic?.name ?? null,
-		critical: criticalOf(of),
+		critical,
 		p: pWords(of),
 		n: of.n ?? null
 	};
 }
 
-const partRow = (part: Part): PartRow => ({
-	...figuresOf(part),
-	about: part.about,
-	verdict: part.verdict ?? null,
-	reason: part.detail ?? null,
-	parameters: parameterWords(part.parameters, criticalOf(part)?.from)
-});
+function partRow(part: Part): PartRow {
+	const critical = criticalOfPart(part);
+	return {
+		...figuresOf(part, critical),
+		about: codeWords(part.about),
+		verdict: part.verdict ?? null,
+		reason: part.detail ?? null,
+		parameters: parameterWords(part.parameters, critical?.from)
+	};
+}
 
 function defaultWords({ byDefault }: Check): string | null {
 	if (!byDefault) return null;
@@ -81,31 +84,41 @@ function defaultWords({ byDefault }: Check): string | null {
 	const p = pValue === null ? null : pWords({ pValue });
 	return [
 		verdict ?? 'shown',
-		...(statistic === null ? [] : [figure(statistic)]),
+		...(statistic === null ? [] : [reading(statistic)]),
 		...(p === null ? [] : [`p ${p.startsWith('<') ? p : `= ${p}`}`])
 	].join(', ');
 }
 
 /** One check as a row; the parts of a replication have a table of their own. */
-export const checkRow = (check: Check): CheckRow => ({
-	...figuresOf(check),
-	id: check.id,
-	anchor: anchorOf(check.id),
-	title: checkTitle(check.id),
-	sentence: checkSentence(check),
-	verdict: check.verdict,
-	nullHypothesis:
-		check.nullHypothesis === undefined ? null : (nullWords[check.nullHypothesis] ?? check.nullHypothesis),
-	source: check.source,
-	thresholds: check.thresholdFrom,
-	parameters: parameterWords(check.parameters, criticalOf(check)?.from),
-	parts: check.group === 'replication' ? [] : (check.parts ?? []).map(partRow),
-	byDefault: defaultWords(check)
-});
+export function checkRow(check: Check): CheckRow {
+	const critical = criticalOf(check);
+	const { id, source, nullHypothesis: code } = check;
+	return {
+		...figuresOf(check, critical),
+		id,
+		anchor: anchorOf(id),
+		title: checkTitle(id),
+		sentence: tied(checkSentence(check)),
+		verdict: check.verdict,
+		nullHypothesis: code === undefined ? null : (nullWords[code] ?? code),
+		source,
+		thresholds: check.thresholdFrom,
+		parameters: parameterWords(check.parameters, critical?.from),
+		parts: check.group === 'replication' ? [] : alignedRows((check.parts ?? []).map(partRow)),
+		byDefault: defaultWords(check)
+	};
+}
+
+/** The points of a column of statistics stand below each other. */
+function alignedRows<Row extends Figures>(rows: readonly Row[]): readonly Row[] {
+	const statistics = aligned(rows.map(({ statistic }) => statistic ?? ''));
+	return rows.map((row, i) => ({ ...row, statistic: row.statistic === null ? null : statistics[i]! }));
+}
 
 /** All judged checks by group, in the order of the result. */
 export function groupRows({ checks, groups }: Pick<RunResult, 'checks' | 'groups'>): readonly GroupRows[] {
 	const names = [...new Set(checks.map(({ group }) => group))].filter((name) => name !== familyGroup);
+	const rows = alignedRows(checks.map(checkRow));
 	return names.map((name) => {
 		const group = groups.find((each) => each.group === name);
 		return {
@@ -113,7 +126,7 @@ export function groupRows({ checks, groups }: Pick<RunResult, 'checks' | 'groups
 			title: groupTitles[name] ?? name,
 			verdict: group?.verdict ?? null,
 			sentence: group ? groupSentence(group) : '',
-			rows: checks.filter((check) => check.group === name).map(checkRow)
+			rows: rows.filter((_, i) => checks[i]!.group === name)
 		};
 	});
 }

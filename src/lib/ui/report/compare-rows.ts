@@ -5,7 +5,7 @@ import type { Verdict } from '$lib/domain/run';
 import type { EquationView } from '../equation';
 import type { FieldChange } from '../changes';
 import type { Interval } from '../interval';
-import { decimalsFor, figure, normal95, pWords } from './figures';
+import { decimalsFor, normal95, pWords, reading } from './figures';
 
 type Figure = number | null;
 
@@ -113,7 +113,7 @@ function sideOf(side: CheckSide | null): CheckPairRow['sides'][number] {
 	return {
 		present: true,
 		verdict,
-		statistic: statistic === null ? null : figure(statistic),
+		statistic: statistic === null ? null : reading(statistic),
 		p: pWords({ ...(pValue !== null && { pValue }), ...(pText !== undefined && { pText }) }),
 		n
 	};

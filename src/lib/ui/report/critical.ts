@@ -1,6 +1,6 @@
 /** What a statistic is held against: a critical value, two bounds, a declared range, a limit of the policy. */
 import type { Check, Part } from '$lib/domain/run-result';
-import { figure } from './figures';
+import { reading, typed } from './figures';
 
 export interface Critical {
 	readonly text: string;
@@ -17,33 +17,41 @@ const number = (parameters: Parameters, key: string): number | undefined => {
 	return typeof value === 'number' ? value : undefined;
 };
 
-function fromParameters(parameters: Parameters): Critical | null {
+/** The two bounds of a statistic; a part has its own, a check those of the part its figure comes from. */
+function bounds(parameters: Parameters): Critical | null {
 	const [i0, i1] = [number(parameters, 'boundI0'), number(parameters, 'boundI1')];
-	if (i0 !== undefined && i1 !== undefined)
-		return {
-			text: `${figure(i0)} · ${figure(i1)}`,
-			note: 'all I(0) · all I(1)',
-			from: ['boundI0', 'boundI1']
-		};
+	if (i0 === undefined || i1 === undefined) return null;
+	return {
+		text: `${reading(i0)} · ${reading(i1)}`,
+		note: 'all I(0) · all I(1)',
+		from: ['boundI0', 'boundI1']
+	};
+}
+
+function limits(parameters: Parameters): Critical | null {
 	const [low, high] = [number(parameters, 'low'), number(parameters, 'high')];
 	// The interval of a half-life is called low and high too, but has no declared counterpart.
 	if (low !== undefined && high !== undefined && 'from' in parameters)
-		return { text: `${figure(low)} to ${figure(high)}`, note: 'declared', from: ['low', 'high'] };
+		return { text: `${reading(low)} to ${reading(high)}`, note: 'declared', from: ['low', 'high'] };
 	const limit = number(parameters, 'limit');
-	if (limit !== undefined) return { text: figure(limit), note: 'policy', from: ['limit'] };
+	if (limit !== undefined) return { text: reading(limit), note: 'policy', from: ['limit'] };
 	const declared = parameters['declared'];
-	return typeof declared === 'string' ? { text: declared, note: 'declared', from: ['declared'] } : null;
+	return typeof declared === 'string'
+		? { text: typed(declared), note: 'declared', from: ['declared'] }
+		: null;
 }
 
-/** The value to hold the statistic of a check or of one of its parts against; null where there is none. */
-export function criticalOf(
-	of: Pick<Check, 'criticalValues' | 'parameters' | 'parts' | 'statistic'> | Part
-): Critical | null {
+const fivePercent = (of: Check | Part): Critical | null => {
 	const five = of.criticalValues?.find(({ level }) => level === '5%');
-	if (five) return { text: figure(five.value) };
-	const own = fromParameters(of.parameters ?? {});
-	if (own || !('parts' in of)) return own;
-	// The figure of the check is that of one of its parts.
-	const part = of.parts?.find(({ about }) => about === of.statistic?.name);
-	return part ? criticalOf(part) : null;
+	return five ? { text: reading(five.value) } : null;
+};
+
+/** What the statistic of a part is held against; null where there is nothing. */
+export const criticalOfPart = (part: Part): Critical | null =>
+	fivePercent(part) ?? bounds(part.parameters ?? {}) ?? limits(part.parameters ?? {});
+
+/** What the statistic of a check is held against; null where there is nothing. */
+export function criticalOf(check: Check): Critical | null {
+	const part = check.parts?.find(({ about }) => about === check.statistic?.name);
+	return fivePercent(check) ?? limits(check.parameters) ?? (part ? criticalOfPart(part) : null);
 }

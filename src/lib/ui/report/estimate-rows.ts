@@ -1,5 +1,6 @@
 /** The estimates of a run as rows: the long run, the adjustment, the short run. */
 import { speedSentence } from '$lib/battery/model-sentences';
+import type { Frequency } from '$lib/domain/period';
 import { termName } from '$lib/domain/register-term-names';
 import type { Estimate, Estimates, RunResult, TermEstimate } from '$lib/domain/run-result';
 import { formatP, formatSignificant } from '../format';
@@ -35,12 +36,12 @@ const termRow = (estimate: TermEstimate, decimals: number): EstimateRow => ({
 	...(estimate.fixed && { note: 'imposed' })
 });
 
+/** Standard errors, by which digits are chosen; the size itself where there is none. */
+const errorsOf = ({ longRun, equation, speed }: Estimates): readonly number[] =>
+	[...longRun, ...equation.terms, speed].map(({ se, value }) => se ?? value);
+
 /** Enough decimals for three digits of the smallest standard error of the run. */
-export const estimateDecimals = (estimates: Estimates): number =>
-	decimalsFor(
-		[...estimates.longRun, ...estimates.equation.terms, estimates.speed].map(({ se }) => se),
-		3
-	);
+export const estimateDecimals = (estimates: Estimates): number => decimalsFor(errorsOf(estimates), 3);
 
 const howLongRun: Readonly<Record<Estimates['estimator'], string>> = {
 	'one-step': 'from the levels of the equation; standard errors by the delta method',
@@ -51,7 +52,13 @@ const howLongRun: Readonly<Record<Estimates['estimator'], string>> = {
 	elsewhere: 'given by the specification, estimated elsewhere'
 };
 
-const halfLifeRow = ({ halfLife }: Estimates): EstimateRow => {
+const periodNouns: Readonly<Record<Frequency, string>> = {
+	annual: 'years',
+	quarterly: 'quarters',
+	monthly: 'months'
+};
+
+const halfLifeRow = ({ halfLife }: Estimates, frequency: Frequency): EstimateRow => {
 	const { value, low, high, level, note } = halfLife;
 	const words = (bound: number | null): string => (bound === null ? 'without end' : formatSignificant(bound));
 	const interval =
@@ -61,7 +68,7 @@ const halfLifeRow = ({ halfLife }: Estimates): EstimateRow => {
 				? undefined
 				: `${100 * level} % interval ${words(low)} to ${words(high)}`;
 	return {
-		name: 'half-life of a shock, periods',
+		name: `half-life of a shock, ${periodNouns[frequency]}`,
 		value: value === null ? 'none' : figure(value),
 		se: null,
 		t: null,
@@ -98,7 +105,7 @@ export function estimateGroups(
 		{
 			title: 'Adjustment',
 			how: speedSentence(estimates, specification.frequency),
-			rows: [row('speed of adjustment', speed, decimals), { ...halfLifeRow(estimates) }]
+			rows: [row('speed of adjustment', speed, decimals), halfLifeRow(estimates, specification.frequency)]
 		},
 		{
 			title: 'Equation',
@@ -110,10 +117,4 @@ export function estimateGroups(
 
 /** Decimals of the typeset equation: one digit of the smallest standard error, at most five. */
 export const equationDecimals = (estimates: Estimates): number =>
-	Math.min(
-		5,
-		decimalsFor(
-			[...estimates.longRun, ...estimates.equation.terms, estimates.speed].map(({ se }) => se),
-			1
-		)
-	);
+	Math.min(5, decimalsFor(errorsOf(estimates), 1));

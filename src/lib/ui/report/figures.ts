@@ -12,6 +12,10 @@ export function figure(value: number, decimals = 3): string {
 	return vanishes ? formatSignificant(value, 2) : formatNumber(value, { decimals });
 }
 
+/** A statistic or parameter: three decimals, below 0.1 three digits. */
+export const reading = (value: number): string =>
+	value !== 0 && Math.abs(value) < 0.1 ? formatSignificant(value, 3) : formatNumber(value, { decimals: 3 });
+
 /** Decimals at which the smallest of some errors still shows so many digits, from 3 to 8. */
 export function decimalsFor(errors: readonly (number | null | undefined)[], digits: number): number {
 	const sizes = errors.map((error) => Math.abs(error ?? 0)).filter((size) => size > 0);
@@ -36,6 +40,13 @@ export function aligned(texts: readonly string[]): readonly string[] {
 	const tail = (text: string): number => (text.includes('.') ? text.length - text.indexOf('.') : 0);
 	const longest = Math.max(0, ...texts.map(tail));
 	return texts.map((text) => text + NO_BREAK.repeat(longest - tail(text)));
+}
+
+/** A sentence whose figures are not torn from their signs and names: `p = 0.064`, `5 %`, `n = 86`. */
+export function tied(sentence: string): string {
+	return sentence
+		.replaceAll(/ ([=<>]) /g, `${NO_BREAK}$1${NO_BREAK}`)
+		.replaceAll(/(?<=\d) %/g, `${NO_BREAK}%`);
 }
 
 /** The first digits of a digest, by which people compare. */

@@ -1,6 +1,6 @@
 /** The parameters of a check in words. */
 import type { Parameter } from '$lib/domain/run-result';
-import { figure } from './figures';
+import { figure, reading, typed } from './figures';
 
 const names: Readonly<Record<string, string>> = {
 	f: 'F',
@@ -36,12 +36,15 @@ const deterministic: Readonly<Record<string, string>> = {
 const nameOf = (key: string): string =>
 	names[key] ?? key.replace(/[A-Z]/g, (letter) => ` ${letter.toLowerCase()}`);
 
-const numberWords = (value: number): string => (Number.isInteger(value) ? figure(value, 0) : figure(value));
+const numberWords = (value: number): string => (Number.isInteger(value) ? figure(value, 0) : reading(value));
 
-/** Codes as words: `estimated-here` is `estimated here`, `5%` is `5 %`; periods stay as they are. */
+/** Codes as words: `bootstrap-iid` is `bootstrap iid`; names and periods stay as they are. */
+export const codeWords = (code: string): string => code.replaceAll(/(?<=[a-z])-(?=[a-z])/g, ' ');
+
 function textWords(key: string, value: string): string {
+	if (key === 'declared') return typed(value);
 	if (/deterministic$/i.test(key)) return deterministic[value] ?? value;
-	return value.replaceAll(/(?<=[a-z])-(?=[a-z])/g, ' ').replace(/(?<=\d)%$/, ' %');
+	return codeWords(value).replace(/(?<=\d)%$/, ' %');
 }
 
 function valueWords(key: string, value: Parameter): string {

@@ -55,6 +55,9 @@ export const load: PageServerLoad = (event) =>
 			a,
 			b,
 			offered: [],
-			compared: { ...compareRuns(left, right), sides: [sideOf(left), sideOf(right)] }
+			compared: {
+				...compareRuns(left, right),
+				sides: [sideOf(left), sideOf(right)]
+			}
 		};
 	});
