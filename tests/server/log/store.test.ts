@@ -159,6 +159,16 @@ describe('checkpoints', () => {
 		expect(register.ctx.log.signCheckpoint()).toEqual(first);
 	});
 
+	test('follow at once on what people act by: a policy adopted', () => {
+		const policy = { policy: `sha256:${'0'.repeat(64)}`, release: 'test' };
+		const seq = enter(register, 'policy.adopted', ['policy'], policy);
+		const q = register.ctx.read.q
+			.selectFrom('checkpoint')
+			.select('size')
+			.where('size', '=', seq + 1);
+		expect(register.ctx.read.first(q)).toEqual({ size: seq + 1 });
+	});
+
 	test('follow within a minute of an entry', () => {
 		vi.useFakeTimers();
 		try {
