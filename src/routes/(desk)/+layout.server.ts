@@ -11,6 +11,7 @@ export const load: LayoutServerLoad = (event) =>
 	serve(event, (ctx, actor) => {
 		const { size, at } = logHead(ctx.read);
 		const name = ctx.people.names([actor.person]).get(actor.person) ?? actor.person;
+		const seesWholeLog = may(ctx, ctx.read, actor, 'log.read');
 		return {
 			who: { label: `${name} · ${roleWords(actor.roles)}`, href: '/account' },
 			today: ctx.now().toISOString().slice(0, 10),
@@ -22,8 +23,10 @@ export const load: LayoutServerLoad = (event) =>
 			})),
 			// Those who may read all of it, and those who see the part about their own models.
 			seesLog:
-				may(ctx, ctx.read, actor, 'log.read') ||
+				seesWholeLog ||
 				(actor.person.startsWith('p_') && ctx.facts.parties(ctx.read, actor.person as PersonId).length > 0),
+			// Pages link the folio of an entry about no model only for those who can open it.
+			seesWholeLog,
 			seesPeople: may(ctx, ctx.read, actor, 'people.read'),
 			folio: size - 1,
 			at
