@@ -36,7 +36,8 @@ export const partiesOfPerson = (q: Q, person: string) =>
 		.select(['model', 'relation'])
 		.where('person', '=', person)
 		.where('until_at', 'is', null)
-		.orderBy('model');
+		.orderBy('model')
+		.orderBy('relation');
 
 /** Who acted on the model's content since an instant, by the types of their entries. */
 export const actorsSince = (q: Q, model: string, types: readonly string[], since: string) =>

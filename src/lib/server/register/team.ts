@@ -14,6 +14,7 @@ import { allow } from '$lib/server/people/allow';
 import { rolesOf, stateOf } from '$lib/server/people/standing';
 import type { Ctx } from '../context';
 import type { Handle } from '../db/handle';
+import { developerCandidates, type Candidate } from './candidates';
 import { partiesNow } from './register.queries';
 
 const appointment = z.strictObject({
@@ -91,5 +92,29 @@ export const changeTeam = (ctx: Ctx, actor: Actor, kind: TeamChange, signed: Sig
 			payload,
 			stepUp
 		});
+	});
+};
+
+/** The owners and developers of a model now, and who could be appointed, for the admin who appoints. */
+export interface Team {
+	readonly now: readonly {
+		readonly person: string;
+		readonly name: string;
+		readonly relation: 'owner' | 'developer';
+		readonly from: string;
+	}[];
+	readonly candidates: readonly Candidate[];
+}
+
+/** What the form that appoints people offers; only to those who may appoint. */
+export const teamOf = (ctx: Ctx, actor: Actor, model: string): Team => {
+	allow(ctx, ctx.read, actor, 'party.grant', { model });
+	const rows = ctx.read.all(partiesNow(ctx.read.q, model));
+	const names = ctx.people.names(rows.map(({ person }) => person as PersonId));
+	return Object.freeze({
+		now: rows.flatMap(({ person, relation, from_at }) =>
+			relation === 'validator' ? [] : [{ person, name: names.get(person) ?? person, relation, from: from_at }]
+		),
+		candidates: developerCandidates(ctx, actor)
 	});
 };

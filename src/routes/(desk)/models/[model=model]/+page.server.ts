@@ -4,12 +4,14 @@ import { zod4 } from 'sveltekit-superforms/adapters';
 import { z } from 'zod';
 import type { Actor, PersonId } from '$lib/domain/actor';
 import { Conflict, Invalid } from '$lib/domain/faults';
+import { takeStepUp } from '$lib/server/auth/step-up';
 import type { Ctx } from '$lib/server/context';
 import { refuseWith } from '$lib/server/http/faults';
 import { serve, signedIn } from '$lib/server/http/serve';
 import { submit } from '$lib/server/http/submit';
 import { editModel } from '$lib/server/register/model';
 import { assignValidator, releaseValidator } from '$lib/server/register/parties';
+import { changeTeam, prepareTeamChange, type TeamChange } from '$lib/server/register/team';
 import { agreeOverride, confirmTier, proposeOverride } from '$lib/server/register/tier';
 import type { Actions, PageServerLoad } from './$types';
 import { sheetPage } from './sheet';
@@ -102,5 +104,44 @@ export const actions: Actions = {
 				reason: text(sent, 'reason')
 			})
 		),
+	/** Builds the statement that an admin signs to appoint or end an owner or developer. */
+	prepare: async (event) => {
+		const sent = await event.request.formData();
+		const actor = signedIn(event);
+		const { ctx } = event.locals;
+		const kind: TeamChange = text(sent, 'kind') === 'end' ? 'end' : 'start';
+		const appointment = {
+			model: event.params.model,
+			person: text(sent, 'person'),
+			relation: text(sent, 'relation') as 'owner'
+		};
+		try {
+			const { challenge, code, options } = await prepareTeamChange(ctx, actor, kind, appointment);
+			const name = ctx.people.names([appointment.person as PersonId]).get(appointment.person) ?? '';
+			const words = [
+				kind === 'start'
+					? `I appoint ${name} as ${appointment.relation} of ${appointment.model}.`
+					: `${name} is no longer ${appointment.relation} of ${appointment.model}.`
+			];
+			return { statement: { challenge, code, options, words, fields: [{ name: 'kind', value: kind }] } };
+		} catch (fault) {
+			if (fault instanceof Invalid || fault instanceof Conflict) return fail(400, { said: fault.message });
+			return refuseWith(event, fault);
+		}
+	},
+	sign: async (event) => {
+		const sent = await event.request.formData();
+		const actor = signedIn(event);
+		const { ctx } = event.locals;
+		try {
+			const answer = { challenge: text(sent, 'challenge'), response: text(sent, 'response') };
+			const signed = await takeStepUp(ctx, actor, answer);
+			changeTeam(ctx, actor, text(sent, 'kind') === 'end' ? 'end' : 'start', signed);
+		} catch (fault) {
+			if (fault instanceof Invalid || fault instanceof Conflict) return fail(400, { said: fault.message });
+			return refuseWith(event, fault);
+		}
+		redirect(303, event.url.pathname);
+	},
 	agree: (event) => act(event, (ctx, actor) => agreeOverride(ctx, actor, event.params.model))
 };

@@ -6,6 +6,7 @@ import { adoptedPolicy } from '$lib/server/policy/policy';
 import { validatorCandidates } from '$lib/server/register/candidates';
 import { modelHeader, modelSheet } from '$lib/server/register/model-sheet';
 import { signsOf } from '$lib/server/register/signs-view';
+import { teamOf } from '$lib/server/register/team';
 import { tierHistory } from '$lib/server/register/tier-history';
 import { versionsOfModel } from '$lib/server/register/version-view';
 import { waitingInRegister } from '$lib/server/register/waiting';
@@ -35,11 +36,13 @@ const questionsOf = (ctx: Ctx) => {
 
 /** What the sheet of a model shows to a reader who sees it whole; the header to everybody else. */
 export const sheetPage = (ctx: Ctx, actor: Actor, model: string) => {
+	const team = may(ctx, ctx.read, actor, 'party.grant', { model }) ? teamOf(ctx, actor, model) : undefined;
 	if (!may(ctx, ctx.read, actor, 'model.read', { model }))
-		return { header: modelHeader(ctx, actor, model), whole: undefined };
+		return { header: modelHeader(ctx, actor, model), whole: undefined, team };
 	const sheet = modelSheet(ctx, actor, model);
 	return {
 		header: { ref: sheet.ref, name: sheet.name, tier: sheet.tier, state: sheet.state },
+		team,
 		whole: {
 			sheet,
 			face: faceOf(ctx, actor, model),
