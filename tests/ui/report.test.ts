@@ -11,13 +11,13 @@ import type { RunFacts } from '$lib/ui/report/run-facts';
 import type { RunResult } from '$lib/domain/run-result';
 import { computed, facts, shortSpecification, specification } from './report-result';
 
-const { policy } = latestRelease();
+const { policy, digest } = latestRelease();
 
 const linesOf = (result: RunResult) =>
 	Object.fromEntries(
 		result.checks
 			.flatMap(({ thresholdFrom }) => thresholdFrom)
-			.map((path) => [path, policyLineView(policyLine(policy, path)!)])
+			.map((path) => [path, policyLineView(policyLine(policy, path)!, path, digest)])
 	);
 
 const report = (result: RunResult, run: RunFacts = facts()): string =>
@@ -101,7 +101,7 @@ describe('the report of US consumption', () => {
 		expect(evidence('design-collinearity')).toContain('open');
 		expect(evidence('residual-arch')).not.toContain('open');
 		for (const path of result.checks.flatMap(({ thresholdFrom }) => thresholdFrom))
-			expect(body).toContain(`href="/policy#${path}"`);
+			expect(body).toContain(`href="/policy?policy=${digest}#${path}"`);
 	});
 
 	it('lists claims as typed beside its own figures', () => {
@@ -164,7 +164,7 @@ describe('other results', () => {
 		const changed = strict.checks.filter(({ byDefault }) => byDefault);
 		expect(changed.length).toBeGreaterThan(0);
 		expect(rowOf(changed[0]!.id.replaceAll('.', '-'), html)).toContain("By the policy's own settings:");
-		const lines = { [setting]: policyLineView(policyLine(policy, setting)!) };
+		const lines = { [setting]: policyLineView(policyLine(policy, setting)!, setting, digest) };
 		expect(textOf(render(Overrides, { props: { settings, lines } }).body)).toMatch(
 			/levels\/query 0\.1 0\.05/
 		);

@@ -6,10 +6,12 @@ import { figure } from './figures';
 export interface PolicyLineView {
 	readonly value: string;
 	readonly says: string;
+	/** Its place on the page of that policy. */
+	readonly href: string;
 }
 
-/** The address of a policy line: its path is its id on the page of the policy. */
-export const policyLineHref = (path: string): string => `/policy#${path}`;
+/** The page of the policy a run was judged by, whichever is in force now. */
+export const policyHref = (digest: string): string => `/policy?policy=${digest}`;
 
 /** `levels/query` is `level query`, `checks/stability.sup-f/trim` is `trim`: the check is known where it stands. */
 export function lineName(path: string): string {
@@ -31,7 +33,13 @@ export function valueWords(value: PolicyLine['value']): string {
 	return (Array.isArray(value) ? value : [value]).map((each: number | string) => one(each)).join(', ');
 }
 
-export const policyLineView = ({ value, unit, says }: PolicyLine): PolicyLineView => ({
+/** A line with its path, which is its id on the page of the policy of that digest. */
+export const policyLineView = (
+	{ value, unit, says }: PolicyLine,
+	path: string,
+	digest: string
+): PolicyLineView => ({
 	value: unit === undefined ? valueWords(value) : `${valueWords(value)} ${unit}`,
-	says
+	says,
+	href: `${policyHref(digest)}#${path}`
 });

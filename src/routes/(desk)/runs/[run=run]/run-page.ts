@@ -56,7 +56,7 @@ const citedLines = (ctx: Ctx, run: RunView, result: RunResult | null): Record<st
 	return Object.fromEntries(
 		[...new Set(paths)].flatMap((path) => {
 			const line = policyLine(policy, path);
-			return line ? [[path, policyLineView(line)]] : [];
+			return line ? [[path, policyLineView(line, path, run.policy)]] : [];
 		})
 	);
 };

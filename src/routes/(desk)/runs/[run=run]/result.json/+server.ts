@@ -1,13 +1,12 @@
-import { canonical } from '$lib/chain/canonical';
 import { serve } from '$lib/server/http/serve';
-import { resultOf } from '$lib/server/runs/run-view';
+import { resultBytes } from '$lib/server/runs/run-view';
 import type { RequestHandler } from './$types';
 
-/** The result as it is stored: canonical JSON, so that its bytes hash to the digest in the log. */
+/** The exact bytes of the stored result: they hash to the digest that the run's entry names. */
 export const GET: RequestHandler = (event) =>
 	serve(event, (ctx, actor) => {
 		const { run } = event.params;
-		return new Response(canonical(resultOf(ctx, actor, run)), {
+		return new Response(new Uint8Array(resultBytes(ctx, actor, run)), {
 			headers: {
 				'content-type': 'application/json',
 				'content-disposition': `attachment; filename="${run}-result.json"`
