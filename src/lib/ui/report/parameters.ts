@@ -1,5 +1,6 @@
 /** The parameters of a check in words. */
 import type { Parameter } from '$lib/domain/run-result';
+import { formatP } from '../format';
 import { figure, reading, typed } from './figures';
 
 const names: Readonly<Record<string, string>> = {
@@ -47,8 +48,10 @@ function textWords(key: string, value: string): string {
 	return codeWords(value).replace(/(?<=\d)%$/, ' %');
 }
 
+const pValues = new Set(['fP', 'lmP', 'pIfI0', 'pIfI1']);
+
 function valueWords(key: string, value: Parameter): string {
-	if (typeof value === 'number') return numberWords(value);
+	if (typeof value === 'number') return pValues.has(key) ? formatP(value) : numberWords(value);
 	if (typeof value === 'boolean') return value ? 'yes' : 'no';
 	if (typeof value === 'string') return textWords(key, value);
 	return value.map((each) => (typeof each === 'number' ? numberWords(each) : each)).join(', ');
