@@ -1,3 +1,5 @@
+import type { SpecificationDraft } from '$lib/domain/register-draft';
+
 /** One column of a list of rows in the form of a specification. */
 export interface RowColumn {
 	readonly id: string;
@@ -19,4 +21,37 @@ export const namesAsOptions = (
 	const all = new Set([...names.filter((name) => name !== ''), ...rows.map((row) => row[column] ?? '')]);
 	all.delete('');
 	return [{ value: '', label: '' }, ...[...all].map((name) => ({ value: name, label: name }))];
+};
+
+interface Option {
+	readonly value: string;
+	readonly label: string;
+}
+
+const plain = (...values: readonly string[]): Option[] => values.map((value) => ({ value, label: value }));
+
+export const frequencies = plain('quarterly', 'monthly', 'annual');
+export const dummyKinds = plain('pulse', 'step', 'seasonal');
+export const dummyPlaces = plain('short', 'long', 'both');
+
+export const estimators: readonly Option[] = [
+	{ value: 'two-step', label: 'two steps: the long run first' },
+	{ value: 'one-step', label: 'one step: levels and differences together' },
+	{ value: 'imposed', label: 'long run imposed: constant and slopes are given' },
+	{ value: 'elsewhere', label: 'estimated elsewhere: all coefficients are given' }
+];
+
+export const standardErrors: readonly Option[] = [
+	{ value: 'ols', label: 'ordinary' },
+	{ value: 'hc3', label: 'robust to heteroskedasticity (HC3)' },
+	{ value: 'hac', label: 'robust to autocorrelation too (HAC)' }
+];
+
+type Writable<T> = { -readonly [K in keyof T]: T[K] };
+
+/** The form's state while it is typed: each cell is bound to its control. */
+export type TypedDraft = {
+	-readonly [K in keyof SpecificationDraft]: SpecificationDraft[K] extends readonly (infer Row)[]
+		? Writable<Row>[]
+		: SpecificationDraft[K];
 };
