@@ -22,13 +22,30 @@ const stop = (fault) => {
 const built = new URL('../build/handler.js', import.meta.url).href;
 const { handler } = await import(built).catch(stop);
 
+// Every answer carries these, also those that the application's own code never sees: static files, redirects, what is
+// refused before its hooks. Where the application says otherwise (a page's own policy), its word stands.
+/** @type {Readonly<Record<string, string>>} */
+const common = {
+	'content-security-policy': "default-src 'none'; frame-ancestors 'none'; base-uri 'none'",
+	'x-content-type-options': 'nosniff',
+	'referrer-policy': 'same-origin',
+	'cross-origin-opener-policy': 'same-origin',
+	'cross-origin-resource-policy': 'same-origin',
+	'permissions-policy':
+		'publickey-credentials-get=(self), publickey-credentials-create=(self), camera=(), microphone=(), geolocation=(), payment=(), usb=()',
+	...(env.ORIGIN.startsWith('https:')
+		? { 'strict-transport-security': 'max-age=63072000; includeSubDomains' }
+		: {})
+};
+const kept = 'public,max-age=31536000,immutable';
+
 const server = createServer(
 	{ headersTimeout: 10_000, requestTimeout: 120_000, keepAliveTimeout: 5_000, maxHeaderSize: 16 * 1024 },
 	(request, response) => {
-		// Static files are answered before the application's hooks: they get the common headers here.
-		response.setHeader('x-content-type-options', 'nosniff');
-		response.setHeader('referrer-policy', 'same-origin');
-		response.setHeader('cross-origin-resource-policy', 'same-origin');
+		for (const [name, value] of Object.entries(common)) response.setHeader(name, value);
+		// Files named by their content never change; everything else is asked for anew.
+		const named = request.url?.startsWith('/_app/immutable/');
+		response.setHeader('cache-control', named ? kept : 'no-store');
 		handler(request, response, () => {
 			response.statusCode = 404;
 			response.end('There is no such page.');

@@ -3,12 +3,12 @@ import { once } from 'node:events';
 import { mkdtempSync, rmSync } from 'node:fs';
 import { createServer } from 'node:net';
 import { tmpdir } from 'node:os';
-import { join, resolve } from 'node:path';
+import { dirname, join, resolve } from 'node:path';
 
 const root = resolve(import.meta.dirname, '../..');
 
 /** A port nobody listens on at this moment. */
-const freePort = async (): Promise<number> => {
+export const freePort = async (): Promise<number> => {
 	const probe = createServer().listen(0, '127.0.0.1');
 	await once(probe, 'listening');
 	const address = probe.address();
@@ -34,15 +34,23 @@ export interface Server {
 const ended = (child: ChildProcess): Promise<unknown> =>
 	child.exitCode === null && child.signalCode === null ? once(child, 'exit') : Promise.resolve();
 
+export interface Starting {
+	readonly demo?: boolean;
+	/** A register that exists; its folder is removed with the server's. */
+	readonly data?: string;
+	readonly port?: number;
+}
+
 /**
- * Starts the built server on a fresh folder: `demo` in an empty working folder of its own, else a real register
- * whose first enrolment links stand in `output()`.
+ * Starts the built server: on the register of `data`; `demo` in an empty working folder of its own; else on a fresh
+ * register whose first enrolment links stand in `output()`.
  */
-export const startServer = async ({ demo = false }: { demo?: boolean } = {}): Promise<Server> => {
-	const folder = mkdtempSync(join(tmpdir(), 'keelbook-'));
-	const port = await freePort();
+export const startServer = async (how: Starting = {}): Promise<Server> => {
+	const { demo = false } = how;
+	const folder = how.data === undefined ? mkdtempSync(join(tmpdir(), 'keelbook-')) : dirname(how.data);
+	const port = how.port ?? (await freePort());
 	const origin = `http://localhost:${port}`;
-	const data = demo ? join(folder, 'data/demo') : join(folder, 'register');
+	const data = how.data ?? join(folder, demo ? 'data/demo' : 'register');
 	const env = Object.fromEntries(
 		Object.entries(process.env).filter(([name]) => !/^(KEELBOOK_|VITEST)/.test(name))
 	);

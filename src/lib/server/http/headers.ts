@@ -1,4 +1,4 @@
-/** Headers of every answer the application makes; start.js gives static files the same. */
+/** Headers of every answer the application makes; scripts/start.js gives the same to those it never sees. */
 export const headers = (origin: string): Readonly<Record<string, string>> => ({
 	'x-content-type-options': 'nosniff',
 	'referrer-policy': 'same-origin',

@@ -1,20 +1,36 @@
 import type { Actor, PersonId } from '$lib/domain/actor';
-import { Absent, Conflict } from '$lib/domain/faults';
+import type { Grant } from '$lib/domain/entry';
+import { Absent, Conflict, Refused } from '$lib/domain/faults';
 import { record } from '$lib/server/log/record';
-import { allow } from '$lib/server/people/allow';
+import { allow, may } from '$lib/server/people/allow';
 import type { Ctx } from '../context';
+import type { Tx } from '../db/handle';
+import type { Schema } from '../db/schema';
 import { stop } from './execution';
 import { runByRef } from './runs.queries';
+
+/** @throws Refused, as if there were no such run to whoever may not even read it */
+const grantOf = (
+	ctx: Ctx,
+	tx: Tx,
+	actor: Actor,
+	{ model, requested_by: starter }: Pick<Schema['run'], 'model' | 'requested_by'>
+): Grant => {
+	try {
+		return allow(ctx, tx, actor, 'run.cancel', { model, starter: starter as PersonId });
+	} catch (fault) {
+		const unknown = fault instanceof Refused && fault.rule === 'S11';
+		if (!unknown || may(ctx, tx, actor, 'run.read', { model })) throw fault;
+		throw new Refused(fault.rule, fault.action, fault.message, false, model);
+	}
+};
 
 /** Cancels a run that has not ended; its thread is ended too. @throws Conflict when it ended meanwhile */
 export const cancelRun = (ctx: Ctx, actor: Actor, ref: string): void => {
 	ctx.write((tx) => {
 		const row = tx.first(runByRef(tx.q, ref));
 		if (!row) throw new Absent(`There is no run ${ref}.`);
-		// Whoever may not read the run is not told that there is one.
-		allow(ctx, tx, actor, 'run.read', { model: row.model });
-		const starter = row.requested_by as PersonId;
-		const grant = allow(ctx, tx, actor, 'run.cancel', { model: row.model, starter });
+		const grant = grantOf(ctx, tx, actor, row);
 		if (row.state !== 'requested')
 			throw new Conflict(`${ref} ${row.state === 'cancelled' ? 'was' : 'has'} ${row.state} already.`);
 		record(ctx, tx, actor, grant, {
