@@ -1,4 +1,5 @@
-import { existsSync } from 'node:fs';
+import { existsSync, readFileSync } from 'node:fs';
+import { createRequire } from 'node:module';
 import { chromium, type Browser, type BrowserContext, type Page } from 'playwright-core';
 
 const debian = '/usr/bin/chromium';
@@ -41,3 +42,39 @@ export const withAuthenticator = async (context: BrowserContext, page: Page): Pr
 		}
 	});
 };
+
+/** Waits until the page's own scripts run: SvelteKit puts its route announcer in once it has mounted. */
+export const alive = async (page: Page): Promise<void> => {
+	await page.locator('#svelte-announcer').waitFor({ state: 'attached' });
+};
+
+/** Opens a page and waits for its scripts; the status it was answered with. */
+export const visit = async (page: Page, address: string): Promise<number> => {
+	const answer = await page.goto(address);
+	await alive(page);
+	return answer?.status() ?? 0;
+};
+
+const axe = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8');
+
+/** Serious and critical faults that axe finds on the page as it stands: `rule: where`. */
+export const inaccessible = async (page: Page): Promise<string[]> => {
+	// Evaluated, not added as a script tag: the page's policy stays in force.
+	await page.evaluate(axe);
+	return page.evaluate(async () => {
+		interface Found {
+			readonly id: string;
+			readonly impact: string;
+			readonly nodes: readonly { readonly target: readonly string[] }[];
+		}
+		const { run } = (globalThis as unknown as { axe: { run: () => Promise<{ violations: Found[] }> } }).axe;
+		const { violations } = await run();
+		return violations
+			.filter(({ impact }) => impact === 'serious' || impact === 'critical')
+			.flatMap(({ id, nodes }) => nodes.map(({ target }) => `${id}: ${target.join(' ')}`));
+	});
+};
+
+/** By how many pixels the page is wider than its window. */
+export const overflow = (page: Page): Promise<number> =>
+	page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth);
