@@ -29,20 +29,32 @@ const dayNumber = (date: CalendarDate): number => {
 	return Date.UTC(year, month - 1, day) / dayLength;
 };
 
+/** Making a formatter costs a thousand times its use. */
+const formatters = new Map<string, Intl.DateTimeFormat>();
+
+const formatterOf = (zone: string): Intl.DateTimeFormat => {
+	let formatter = formatters.get(zone);
+	if (!formatter) {
+		formatter = new Intl.DateTimeFormat('en-US', {
+			timeZone: zone,
+			calendar: 'gregory',
+			numberingSystem: 'latn',
+			year: 'numeric',
+			month: '2-digit',
+			day: '2-digit'
+		});
+		formatters.set(zone, formatter);
+	}
+	return formatter;
+};
+
 /**
  * The calendar date of an instant in an IANA zone: a decision signed at 23:30 UTC belongs to the next day in Helsinki.
  *
  * @param instant a moment, or its ISO text
  */
 export const dateIn = (zone: string, instant: Date | string): CalendarDate => {
-	const shown = new Intl.DateTimeFormat('en-US', {
-		timeZone: zone,
-		calendar: 'gregory',
-		numberingSystem: 'latn',
-		year: 'numeric',
-		month: '2-digit',
-		day: '2-digit'
-	}).formatToParts(typeof instant === 'string' ? new Date(instant) : instant);
+	const shown = formatterOf(zone).formatToParts(typeof instant === 'string' ? new Date(instant) : instant);
 	const of = (type: string): number => Number(shown.find((part) => part.type === type)!.value);
 	return written(of('year'), of('month'), of('day'));
 };

@@ -8,16 +8,18 @@ import { allModels } from './register.queries';
 
 type Reading = Extract<Action, 'model.read' | 'version.read' | 'run.read'>;
 
-const relatedTo = (handle: Handle, actor: Actor): ReadonlySet<string> =>
-	new Set(
-		actor.person === 'system' || actor.person === 'cli'
-			? []
-			: partiesOf(handle, actor.person).map(({ model }) => model)
-	);
+/** The actor's relations to each model: `owner`, `developer,owner`. */
+const relationsOf = (handle: Handle, actor: Actor): ReadonlyMap<string, string> => {
+	const relations = new Map<string, string>();
+	if (actor.person === 'system' || actor.person === 'cli') return relations;
+	for (const { model, party } of partiesOf(handle, actor.person))
+		relations.set(model, [relations.get(model), party].filter(Boolean).join());
+	return relations;
+};
 
 /**
- * Which models an actor may read, for lists. Models the actor has no relation to are all answered alike by the
- * permission table, so that it is asked once for them and not a thousand times.
+ * Which models an actor may read, for lists. For reading the permission table looks at the actor's roles and relations
+ * to the model and at nothing else, so that it is asked once for each set of relations and not a thousand times.
  */
 export const readable = (
 	ctx: Ctx,
@@ -25,12 +27,17 @@ export const readable = (
 	actor: Actor,
 	action: Reading = 'model.read'
 ): ((model: string) => boolean) => {
-	const related = relatedTo(handle, actor);
-	let others: boolean | undefined;
-	return (model) =>
-		related.has(model)
-			? may(ctx, handle, actor, action, { model })
-			: (others ??= may(ctx, handle, actor, action, { model }));
+	const relations = relationsOf(handle, actor);
+	const answers = new Map<string, boolean>();
+	return (model) => {
+		const related = relations.get(model) ?? '';
+		let answer = answers.get(related);
+		if (answer === undefined) {
+			answer = may(ctx, handle, actor, action, { model });
+			answers.set(related, answer);
+		}
+		return answer;
+	};
 };
 
 /** The models an actor may read, or `all`. */

@@ -1,4 +1,5 @@
 import type { Actor } from '$lib/domain/actor';
+import type { Policy } from '$lib/domain/policy';
 import type { Specification } from '$lib/domain/specification';
 import { undeclared } from '$lib/domain/register-signs';
 import { may } from '$lib/server/people/allow';
@@ -22,9 +23,9 @@ export interface WaitingItem {
 
 const soon = 60;
 
-const ofOwner = (ctx: Ctx, handle: Handle, model: string): Omit<WaitingItem, 'name'>[] => {
+const ofOwner = (ctx: Ctx, handle: Handle, policy: Policy, model: string): Omit<WaitingItem, 'name'>[] => {
 	const row = handle.first(modelByRef(handle.q, model))!;
-	const due = dueOfRow(ctx, adoptedPolicy(ctx, handle).policy, row);
+	const due = dueOfRow(ctx, policy, row);
 	const declared = signsInForce(handle, model, 'owner');
 	const versions = handle.all(versionsOf(handle.q, model));
 	const at = `/models/${model}`;
@@ -57,9 +58,9 @@ const ofOwner = (ctx: Ctx, handle: Handle, model: string): Omit<WaitingItem, 'na
 	return [...review, ...drafts];
 };
 
-const ofValidator = (ctx: Ctx, handle: Handle, model: string): Omit<WaitingItem, 'name'>[] => {
+const ofValidator = (handle: Handle, policy: Policy, model: string): Omit<WaitingItem, 'name'>[] => {
 	const row = handle.first(modelByRef(handle.q, model))!;
-	const tier = tierOfRow(adoptedPolicy(ctx, handle).policy, row);
+	const tier = tierOfRow(policy, row);
 	if (row.override_tier !== null || (tier.how !== 'proposed' && tier.tier === tier.proposed)) return [];
 	if (tier.how === 'overridden') return [];
 	const what =
@@ -76,6 +77,7 @@ export const waitingInRegister = (
 	handle: Handle = ctx.read
 ): readonly WaitingItem[] => {
 	if (actor.person === 'system' || actor.person === 'cli') return [];
+	const { policy } = adoptedPolicy(ctx, handle);
 	const related = partiesOf(handle, actor.person);
 	const team = new Set(related.filter(({ party }) => party !== 'validator').map(({ model }) => model));
 	const judged = related.filter(({ party }) => party === 'validator').map(({ model }) => model);
@@ -90,8 +92,8 @@ export const waitingInRegister = (
 			href: `/models/${ref}#tier`
 		}));
 	const items: Omit<WaitingItem, 'name'>[] = [
-		...[...team].flatMap((model) => ofOwner(ctx, handle, model)),
-		...judged.flatMap((model) => ofValidator(ctx, handle, model)),
+		...[...team].flatMap((model) => ofOwner(ctx, handle, policy, model)),
+		...judged.flatMap((model) => ofValidator(handle, policy, model)),
 		...overrides
 	];
 	return items

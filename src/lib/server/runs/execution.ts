@@ -98,7 +98,10 @@ export const enqueue = (ctx: Ctx, ref: string): void => {
 	const all = jobsOf(ctx.pool);
 	if (all.has(ref)) return;
 	const job = { controller: new AbortController(), progress: undefined as Progress | undefined };
-	const ended = perform(ctx, ref, job).finally(() => all.delete(ref));
+	const ended = perform(ctx, ref, job)
+		// The end could not be entered (a full disk): the run stays in the queue, and the server goes on.
+		.catch((fault: unknown) => process.stderr.write(`${ref} could not be ended: ${String(fault)}\n`))
+		.then(() => void all.delete(ref));
 	all.set(ref, Object.assign(job, { ended }));
 };
 
