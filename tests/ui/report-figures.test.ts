@@ -33,7 +33,8 @@ describe('figures of a column', () => {
 		expect(reading(22.814489)).toBe('22.814');
 		expect(reading(-0.0065273)).toBe('−0.00653');
 		expect(reading(0.1)).toBe('0.100');
-		expect(reading(0)).toBe('0.000');
+		expect(reading(0)).toBe('0');
+		expect(reading(30)).toBe('30');
 	});
 
 	it('chooses decimals by the smallest standard error, between 3 and 8', () => {

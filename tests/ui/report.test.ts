@@ -88,7 +88,7 @@ describe('the report of US consumption', () => {
 		['cointegration-bounds', ['6.717', '3.790 · 4.850', 'all I(0) · all I(1)']],
 		['long-run-range', ['−0.00653', '−0.0200 to 0', 'declared', 'interval −0.00893 to −0.00412']],
 		['long-run-signs', ['declared', '−']],
-		['design-collinearity', ['42.465', '30.000', 'policy']],
+		['design-collinearity', ['42.465', '30 policy']],
 		['residual-stationarity-held', ['not assessable', 'no approved version']]
 	])('%s: figures, null, source and policy line', (id, pieces) => {
 		const row = rowOf(id);

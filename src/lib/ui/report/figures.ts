@@ -12,9 +12,11 @@ export function figure(value: number, decimals = 3): string {
 	return vanishes ? formatSignificant(value, 2) : formatNumber(value, { decimals });
 }
 
-/** A statistic or parameter: three decimals, below 0.1 three digits. */
-export const reading = (value: number): string =>
-	value !== 0 && Math.abs(value) < 0.1 ? formatSignificant(value, 3) : formatNumber(value, { decimals: 3 });
+/** A statistic or parameter: three decimals, below 0.1 three digits, a whole number as it is. */
+export function reading(value: number): string {
+	if (Number.isInteger(value)) return formatNumber(value, { decimals: 0 });
+	return Math.abs(value) < 0.1 ? formatSignificant(value, 3) : formatNumber(value, { decimals: 3 });
+}
 
 /** Decimals at which the smallest of some errors still shows so many digits, from 3 to 8. */
 export function decimalsFor(errors: readonly (number | null | undefined)[], digits: number): number {

@@ -1,7 +1,7 @@
 /** The parameters of a check in words. */
 import type { Parameter } from '$lib/domain/run-result';
 import { formatP } from '../format';
-import { figure, reading, typed } from './figures';
+import { reading, typed } from './figures';
 
 const names: Readonly<Record<string, string>> = {
 	f: 'F',
@@ -37,8 +37,6 @@ const deterministic: Readonly<Record<string, string>> = {
 const nameOf = (key: string): string =>
 	names[key] ?? key.replace(/[A-Z]/g, (letter) => ` ${letter.toLowerCase()}`);
 
-const numberWords = (value: number): string => (Number.isInteger(value) ? figure(value, 0) : reading(value));
-
 /** Codes as words: `bootstrap-iid` is `bootstrap iid`; names and periods stay as they are. */
 export const codeWords = (code: string): string => code.replaceAll(/(?<=[a-z])-(?=[a-z])/g, ' ');
 
@@ -51,10 +49,10 @@ function textWords(key: string, value: string): string {
 const pValues = new Set(['fP', 'lmP', 'pIfI0', 'pIfI1']);
 
 function valueWords(key: string, value: Parameter): string {
-	if (typeof value === 'number') return pValues.has(key) ? formatP(value) : numberWords(value);
+	if (typeof value === 'number') return pValues.has(key) ? formatP(value) : reading(value);
 	if (typeof value === 'boolean') return value ? 'yes' : 'no';
 	if (typeof value === 'string') return textWords(key, value);
-	return value.map((each) => (typeof each === 'number' ? numberWords(each) : each)).join(', ');
+	return value.map((each) => (typeof each === 'number' ? reading(each) : each)).join(', ');
 }
 
 /** Two parameters that are the ends of one interval. */
@@ -71,7 +69,7 @@ function intervalWords(left: Map<string, Parameter>): string[] {
 		if (typeof from !== 'number') return [];
 		left.delete(low);
 		left.delete(high);
-		return [`${name} ${numberWords(from)} to ${typeof to === 'number' ? numberWords(to) : 'without end'}`];
+		return [`${name} ${reading(from)} to ${typeof to === 'number' ? reading(to) : 'without end'}`];
 	});
 }
 
