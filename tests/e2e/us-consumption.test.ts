@@ -4,8 +4,8 @@ import { resolve } from 'node:path';
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, beforeEach, expect, test } from 'vitest';
 import { loadCase, type Case } from '../reference/reference';
-import { launch, visit } from '../support/browser';
-import { compareReport } from '../support/journey-figures';
+import { launch, posted, visit } from '../support/browser';
+import { claimsOf, compareReport } from '../support/journey-figures';
 import {
 	assignValidator,
 	confirmVintage,
@@ -62,20 +62,6 @@ const declarations: readonly Declaration[] = [
 	{ series: 'realdpi', sign: '+', low: '0.5', high: '1.5', why: 'Households spend out of their income.' },
 	{ series: 'tbilrate', sign: '-', low: '-0.03', high: '0', why: 'A higher rate rewards saving.' }
 ];
-
-/** Answer of the API to a same-origin request of a signed-in page. */
-const posted = (page: Page, path: string, body: object) =>
-	page.evaluate(
-		async ([to, sent]) => {
-			const answer = await fetch(to!, {
-				method: 'POST',
-				headers: { 'content-type': 'application/json' },
-				body: sent!
-			});
-			return { status: answer.status, body: (await answer.json()) as Record<string, unknown> };
-		},
-		[path, JSON.stringify(body)]
-	);
 
 /** Somebody enrols by an invitation, is given a role (which ends their sessions) and signs in again. */
 const join = async (name: string, n: number, role: string, second = false): Promise<Someone> => {
@@ -205,29 +191,6 @@ test('signs first, then the data with their lineage', async () => {
 	expect(vintage).toBe('D-0001/1');
 });
 
-/** The coefficients of the reference, rounded to four decimals and typed as a paper would print them. */
-const claims = (): string => {
-	const { coef, se } = reference.checks.find(({ id }) => id === 'ecm1')!.values as Record<
-		string,
-		Record<string, number>
-	>;
-	const names: Readonly<Record<string, string>> = {
-		const: 'constant',
-		'y.l1': 'realcons(t-1)',
-		'realdpi.l1': 'realdpi(t-1)',
-		'tbilrate.l1': 'tbilrate(t-1)',
-		'd.y.l1': 'Δrealcons(t-1)',
-		'd.y.l2': 'Δrealcons(t-2)',
-		'd.realdpi.l0': 'Δrealdpi(t)',
-		'd.realdpi.l1': 'Δrealdpi(t-1)',
-		'd.tbilrate.l0': 'Δtbilrate(t)',
-		'd.tbilrate.l1': 'Δtbilrate(t-1)'
-	};
-	return Object.keys(names)
-		.map((code) => `${names[code]}\t${coef![code]!.toFixed(4)}\t(${se![code]!.toFixed(4)})`)
-		.join('\n');
-};
-
 test('the owner specifies term by term, pastes the claims and submits', async () => {
 	const { page } = cleo;
 	await specify(page, server.origin, model, {
@@ -241,7 +204,8 @@ test('the owner specifies term by term, pastes the claims and submits', async ()
 		own: '1, 2',
 		lags: '0-1',
 		estimator: 'one-step',
-		claims: claims(),
+		// As a paper would print them: four decimals, standard errors in brackets.
+		claims: claimsOf(reference, 4),
 		claimedSource: 'Working paper of 2010-02-14, table 2.',
 		reason: 'Logs of the levels, two own lags.'
 	});

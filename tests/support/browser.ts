@@ -78,3 +78,21 @@ export const inaccessible = async (page: Page): Promise<string[]> => {
 /** By how many pixels the page is wider than its window. */
 export const overflow = (page: Page): Promise<number> =>
 	page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth);
+
+/** Answer of the API to a same-origin request from the page, with the session of whoever is signed in there. */
+export const posted = (
+	page: Page,
+	path: string,
+	body: object
+): Promise<{ status: number; body: Record<string, unknown> }> =>
+	page.evaluate(
+		async ([to, sent]) => {
+			const answer = await fetch(to!, {
+				method: 'POST',
+				headers: { 'content-type': 'application/json' },
+				body: sent!
+			});
+			return { status: answer.status, body: (await answer.json()) as Record<string, unknown> };
+		},
+		[path, JSON.stringify(body)]
+	);

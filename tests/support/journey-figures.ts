@@ -26,6 +26,15 @@ const nameOf = (code: string, y: string): string => {
 	return `${difference ? 'Δ' : ''}${series === 'y' ? y : series}(t${lag === '0' ? '' : `−${lag}`})`;
 };
 
+/** The coefficients and errors of the case as a table to paste: term, value, error in brackets. */
+export const claimsOf = (of: Case, decimals: number): string => {
+	const { y } = of.model as EcmModel;
+	const [coef, se] = ['coef', 'se'].map((key) => valueOf(of, 'ecm1', key) as Record<string, number>);
+	return Object.keys(coef!)
+		.map((code) => `${nameOf(code, y)}\t${coef![code]!.toFixed(decimals)}\t(${se![code]!.toFixed(decimals)})`)
+		.join('\n');
+};
+
 const compareTerms = (figures: Figures, of: Case, report: ShownReport): void => {
 	const { y } = of.model as EcmModel;
 	const rows = report.estimates['Equation']!;
