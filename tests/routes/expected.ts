@@ -73,7 +73,7 @@ const atDoor = ({ door }: Row, persona: Persona): Expected => {
 
 /** A recovery session may do what its row says, and else nothing. */
 const inRecovery = (row: Row, { reference }: Case, { person, own }: Known): Expected => {
-	const unknown = reference === 'absent' && row.absent === undefined && !row.judgedFirst;
+	const unknown = reference === 'absent' && row.absent === undefined && !row.judgedFirst && !row.lists;
 	if (unknown || (reference === 'absent part' && row.partFirst)) return judged(row, 'absent', person, '');
 	return row.recovery === undefined
 		? judged(row, 'refuse', person, 'recovery')

@@ -71,6 +71,8 @@ export interface Row {
 	readonly partFirst?: true;
 	/** Permission is asked before the reference is looked up: whoever is refused is refused there too. */
 	readonly judgedFirst?: true;
+	/** A list under a filter: whoever may see no list is refused whatever the filter says. */
+	readonly lists?: true;
 	/** The scope that an API route asks of tokens. */
 	readonly scope?: Scope;
 	/** Rules by which tokens with the right scope are refused nevertheless. */

@@ -135,6 +135,14 @@ export const apiRows: readonly Row[] = [
 	{ route: vintage, ...hidden, action: 'data.read', recovery: 'hide', partFirst: true },
 	{ route: `${vintage}/file`, ...hidden, action: 'data.read', recovery: 'hide' },
 	{ route: `${v1}/runs`, ...read, action: 'register.read' },
+	{
+		route: `${v1}/runs`,
+		what: 'of one model',
+		...hidden,
+		action: 'run.read',
+		search: ({ model: ref }) => `?model=${ref}`,
+		lists: true
+	},
 	{ route: run, ...hidden, action: 'run.read' },
 	{ route: `${run}/result`, ...hidden, action: 'run.read' },
 	{

@@ -22,6 +22,13 @@ const cancelling = {
 
 export const runRows: readonly Row[] = [
 	{ route: '/(desk)/runs', method: 'GET', action: 'register.read', allowed: 200 },
+	{
+		route: '/(desk)/runs',
+		what: 'of one model',
+		...reading,
+		search: ({ model }) => `?model=${model}`,
+		lists: true
+	},
 	{ route: '/(desk)/runs', method: 'POST ?/cancel', ...cancelling, send: ({ run }) => ({ form: { run } }) },
 	{ route: run, ...reading },
 	{ route: `${run}/result.json`, ...reading },
