@@ -47,10 +47,23 @@ const claims = [
 	`Δ LRM(t-1),${coef!['d.y.l1']!.toFixed(4)}`
 ].join('\n');
 
+const specification = {
+	series: ['LRM', 'LRY', 'IBO', 'IDE'].map((name) => ({ name, column: name, unit: 'log', transform: '' })),
+	from: '1974-Q1',
+	own: '1',
+	lags: '0-1',
+	estimator: 'one-step',
+	claims,
+	claimedSource: 'Reference table, four decimals.',
+	reason: ''
+} as const;
+
+let model: string;
+
 test('a seat of the demo bank registers Danish money demand and runs it', async () => {
 	const { origin } = server;
 	await takeSeat(page, origin, /owner/);
-	const model = await registerModel(page, origin, {
+	model = await registerModel(page, origin, {
 		name: 'Danish money demand',
 		portfolio: 'Deposits',
 		purpose: 'Projects real money holdings from income and two interest rates.',
@@ -77,17 +90,7 @@ test('a seat of the demo bank registers Danish money demand and runs it', async 
 		}
 	});
 	expect(vintage).toMatch(/^D-\d+\/1$/);
-	await specify(page, origin, model, {
-		series: ['LRM', 'LRY', 'IBO', 'IDE'].map((name) => ({ name, column: name, unit: 'log', transform: '' })),
-		from: '1974-Q1',
-		to: '1987-Q3',
-		own: '1',
-		lags: '0-1',
-		estimator: 'one-step',
-		claims,
-		claimedSource: 'Reference table, four decimals.',
-		reason: ''
-	});
+	await specify(page, origin, model, { ...specification, to: '1987-Q3' });
 	const version = await submitVersion(page);
 	await startRun(page, origin, version, 'planned');
 	await awaitReport(page);
@@ -105,6 +108,35 @@ test('its figures are the reference figures, and what 55 quarters cannot show is
 	expect(report.checks['cointegration-engle-granger']!.further).toContain('judged by bootstrap iid');
 	expect(report.checks['design-degrees']!.verdict).toBe('fails');
 	expect(report.replication.map((row) => row['replicates'])).toEqual(Array.from({ length: 5 }, () => 'yes'));
+});
+
+test('on its first six years most of the battery is not assessable, and says why', async () => {
+	const { origin } = server;
+	await specify(page, origin, model, {
+		...specification,
+		to: '1979-Q4',
+		reason: 'What the first six years alone would have shown.'
+	});
+	const version = await submitVersion(page);
+	await startRun(page, origin, version, 'exploratory');
+	await awaitReport(page);
+	const { checks } = await readReport(page);
+	const silent = Object.entries(checks).filter(([, { verdict }]) => verdict === 'not assessable');
+	expect(silent.map(([id]) => id)).toEqual(
+		expect.arrayContaining([
+			'integration-order',
+			'residual-stationarity-refit',
+			'residual-arch',
+			'residual-normality',
+			'residual-heteroskedasticity',
+			'residual-functional-form',
+			'long-run-precision',
+			'stability-cusum',
+			'stability-cusumsq',
+			'stability-sup-f'
+		])
+	);
+	for (const [, { sentence }] of silent) expect(sentence).toMatch(/^Not assessable: .{20,}/);
 });
 
 test('no page wrote an error to its console', () => expect(errors).toEqual([]));
