@@ -35,7 +35,8 @@ const judged = (row: Row, verdict: Verdict, person: string, rule: string, action
 type Known = Exclude<Persona, { kind: 'anonymous' | 'over' }>;
 
 const verdictAt = (row: Row, { reference }: Case, persona: Known): Verdict => {
-	if (reference === 'absent' && !row.judgedFirst) return row.absent ?? 'absent';
+	if (row.blind) return verdictOf(row, persona.own);
+	if (reference === 'absent' && !row.judgedFirst) return 'absent';
 	if (reference === 'absent part' && row.partFirst) return 'absent';
 	const verdict = verdictOf(row, reference === 'other' ? persona.other : persona.own);
 	return reference.startsWith('absent') && verdict === 'allow' ? 'absent' : verdict;
@@ -73,7 +74,7 @@ const atDoor = ({ door }: Row, persona: Persona): Expected => {
 
 /** A recovery session may do what its row says, and else nothing. */
 const inRecovery = (row: Row, { reference }: Case, { person, own }: Known): Expected => {
-	const unknown = reference === 'absent' && row.absent === undefined && !row.judgedFirst && !row.lists;
+	const unknown = reference === 'absent' && !row.blind && !row.judgedFirst && !row.lists;
 	if (unknown || (reference === 'absent part' && row.partFirst)) return judged(row, 'absent', person, '');
 	return row.recovery === undefined
 		? judged(row, 'refuse', person, 'recovery')

@@ -65,8 +65,8 @@ export interface Row {
 	readonly enters?: readonly string[];
 	/** Event types that the first one allowed enters; the next ones come too late. */
 	readonly entersOnce?: readonly string[];
-	/** What everybody gets for a reference that does not exist, where it is not `absent`. */
-	readonly absent?: Verdict;
+	/** The reference in the address plays no part: what does not exist is answered like one's own. */
+	readonly blind?: true;
 	/** A part, such as a vintage, is looked up before permission is asked. */
 	readonly partFirst?: true;
 	/** Permission is asked before the reference is looked up: whoever is refused is refused there too. */

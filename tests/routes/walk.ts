@@ -9,6 +9,9 @@ import { ruleOf, verdictOf, type Row } from './row';
 export const asPersona = (bank: Bank, { asked }: Case, persona: Persona): Asked => {
 	const page = !asked.path.startsWith('/api/');
 	const headers: Record<string, string> = { ...asked.headers, accept: page ? 'text/html' : '*/*' };
+	// As a page's script sends a form: the action alone is answered, and no page loaded after it that could refuse too.
+	if (page && asked.method === 'POST')
+		Object.assign(headers, { accept: 'application/json', 'x-sveltekit-action': 'true' });
 	if (persona.kind === 'token') headers['authorization'] = `Bearer ${persona.token}`;
 	else if (persona.cookie !== undefined) headers['cookie'] = `keelbook-local=${persona.cookie}`;
 	// A program with a token has no origin; a page's form has.
@@ -59,14 +62,24 @@ const refusalLine = ({ expected: { refusal } }: Attempt): string[] =>
 /** Said of what is not there and of what may not be known alike. */
 const nothing = 'There is nothing under this address or reference.';
 
+/** A form action's result says its status in its body. */
+const resultOf = ({ status, headers, text }: Answer): { status: number; location?: string | undefined } => {
+	if (headers['content-type'] !== 'application/json' || status !== 200)
+		return { status, location: headers.location };
+	const said = JSON.parse(text) as { type?: string; status?: number; location?: string };
+	return said.type === 'failure' || said.type === 'redirect'
+		? { status: said.status ?? status, location: said.location }
+		: { status };
+};
+
 const detail = (row: Row, { expected }: Attempt, answer: Answer): string | undefined => {
 	const { word, refusal } = expected;
 	if ((word === 'hide' || word === 'absent') && !answer.text.includes(nothing))
 		return 'says more than nothing';
 	if (word === 'sign in' && groupOf(row.route) === 'desk')
-		return answer.headers.location?.startsWith('/sign-in?next=')
+		return resultOf(answer).location?.startsWith('/sign-in?next=')
 			? undefined
-			: `led to ${answer.headers.location}`;
+			: `led to ${resultOf(answer).location}`;
 	if (groupOf(row.route) !== 'api' || answer.status < 400) return undefined;
 	if (answer.headers['content-type'] !== 'application/problem+json') return 'no problem document';
 	const { rule } = JSON.parse(answer.text) as { rule?: string };
@@ -78,9 +91,10 @@ const attemptOf = async (bank: Bank, row: Row, at: Case, attempt: Attempt): Prom
 	const { persona, expected } = attempt;
 	const answer = await ask(bank.origin, asPersona(bank, at, persona));
 	const about = `${at.reference} · ${persona.name} · ${expected.word}`;
-	if (!expected.statuses.includes(answer.status)) {
-		const fault = answer.status === 500 ? bank.server.output().trim().split('\n').at(-1) : '';
-		return [`${about}: ${answer.status}, not ${expected.statuses.join(' or ')} ${fault}`];
+	const { status } = resultOf(answer);
+	if (!expected.statuses.includes(status)) {
+		const fault = status === 500 ? bank.server.output().trim().split('\n').at(-1) : '';
+		return [`${about}: ${status}, not ${expected.statuses.join(' or ')} ${fault}`];
 	}
 	const wrong = detail(row, attempt, answer);
 	return wrong === undefined ? [] : [`${about}: ${wrong}`];

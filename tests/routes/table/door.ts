@@ -23,8 +23,7 @@ export const doorRows: readonly Row[] = [
 		...open,
 		send: () => ({ form: { response: '{}' } }),
 		notes: ['sign-in.failed'],
-		// Whoever is signed in is led on.
-		door: { anonymous: 401, signedIn: 303, recovery: 401 }
+		door: everybody(401)
 	},
 	{
 		route: '/(door)/sign-in',

@@ -160,7 +160,7 @@ const appointments: readonly Row[] = [
 		rule: 'step-up',
 		recovery: 'refuse',
 		about: 'model',
-		absent: 'refuse'
+		blind: true
 	}
 ];
 

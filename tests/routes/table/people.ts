@@ -161,9 +161,9 @@ const directory: readonly Row[] = [
 		allows: admins,
 		allowed: 200,
 		about: 'person',
-		judgedFirst: true
+		blind: true
 	},
-	{ route: one, method: 'POST ?/sign', ...unsigned, about: 'person', absent: 'refuse' },
+	{ route: one, method: 'POST ?/sign', ...unsigned, about: 'person', blind: true },
 	{
 		route: people,
 		method: 'POST ?/withdraw',

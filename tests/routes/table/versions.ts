@@ -5,6 +5,15 @@ const signs = `${model}/signs`;
 const drafting = `${model}/versions/new`;
 const version = `${model}/versions/[n=ordinal]`;
 
+/** What was typed comes back with a row more; nothing is read or stored. */
+const echo = {
+	action: 'register.read',
+	allowed: 200,
+	recovery: 'allow',
+	about: 'model',
+	blind: true
+} as const;
+
 const declaration = (side: string) => ({
 	form: { side, series: 'unemp', sign: '+', low: '0.1', high: '1', rationale: 'As before.' }
 });
@@ -14,11 +23,8 @@ const declaring: readonly Row[] = [
 	{
 		route: signs,
 		method: 'POST ?/rows',
-		action: 'model.read',
-		send: () => ({ form: { edit: 'add' } }),
-		allows: readers,
-		allowed: 200,
-		about: 'model'
+		...echo,
+		send: () => ({ form: { edit: 'add' } })
 	},
 	{
 		route: signs,
@@ -57,12 +63,8 @@ const specifying: readonly Row[] = [
 	{
 		route: drafting,
 		method: 'POST ?/edit',
-		action: 'version.draft',
-		send: () => ({ form: { edit: 'series:add' } }),
-		allows: team,
-		unread: 'model.read',
-		allowed: 200,
-		about: 'model'
+		...echo,
+		send: () => ({ form: { edit: 'series:add' } })
 	},
 	{
 		route: drafting,

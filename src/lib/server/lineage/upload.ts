@@ -189,9 +189,9 @@ export const discardUpload = (
 	actor: Actor,
 	asked: { readonly model: string; readonly upload: string }
 ): void => {
-	waitingUpload(ctx, actor, asked.upload, asked.model);
 	ctx.write((tx) => {
 		allow(ctx, tx, actor, 'dataset.store', { model: asked.model });
+		waitingUpload(ctx, actor, asked.upload, asked.model);
 		tx.remove('upload', { id: asked.upload });
 	});
 };
