@@ -12,8 +12,8 @@ export interface Bank extends Populated {
 	readonly origin: string;
 	/** The first entries are those of its making; the rest is what requests wrote. */
 	readonly entriesAfter: (seq: number) => readonly Entry[];
-	/** Sets the server's clock to the next full minute. */
-	readonly nextMinute: () => Promise<void>;
+	/** Sets the server's clock to a full minute: the next one, or so many later. */
+	readonly nextMinute: (minutes?: number) => Promise<void>;
 	readonly close: () => Promise<void>;
 }
 
@@ -34,7 +34,7 @@ export const openBank = async (): Promise<Bank> => {
 		server,
 		origin: server.origin,
 		entriesAfter: (seq) => after.all(seq).map(({ body }) => JSON.parse(body) as Entry),
-		nextMinute: () => server.moveClock(new Date(++minute * 60_000).toISOString()),
+		nextMinute: (minutes = 1) => server.moveClock(new Date((minute += minutes) * 60_000).toISOString()),
 		close: async () => {
 			database.close();
 			await server.stop();

@@ -1,5 +1,6 @@
 import { actionOf, ruleOf, verdictOf, type Row, type Verdict } from './row';
 import type { Case } from './cases';
+import type { TokenName } from '../support/populated';
 import type { Persona } from './personas';
 
 /** What one persona must be answered at one address. */
@@ -53,13 +54,17 @@ const ofPerson = (row: Row, at: Case, persona: Known): Expected => {
 	);
 };
 
+const dead: readonly TokenName[] = ['leaver', 'expired', 'revoked'];
+
 const ofToken = (row: Row, at: Case, persona: Extract<Persona, { kind: 'token' }>): Expected => {
 	const { scope, person } = persona;
-	if (scope === 'leaver') return { word: 'sign in', statuses: [401] };
+	if (dead.includes(scope)) return { word: 'sign in', statuses: [401] };
 	if (scope !== 'every' && scope !== row.scope)
 		return judged(row, 'refuse', person, 'token-scope', `api:${row.scope}`);
+	const standing = at.reference === 'other' ? persona.other : persona.own;
 	const rule = row.tokenRules?.[scope];
-	const reached = at.reference === 'own' || at.reference === 'other';
+	// Whoever is refused an earlier act is refused that.
+	const reached = !at.reference.startsWith('absent') && row.actions?.[standing] === undefined;
 	return rule !== undefined && reached
 		? judged(row, 'refuse', person, rule, row.action)
 		: ofPerson(row, at, persona);

@@ -43,7 +43,9 @@ const cast: Readonly<Partial<Record<Cast, readonly [own: Standing, other: Standi
 	auditor: ['auditor', 'auditor'],
 	admin: ['admin', 'admin'],
 	secondAdmin: ['secondAdmin', 'secondAdmin'],
-	stranger: ['stranger', 'stranger']
+	stranger: ['stranger', 'stranger'],
+	formerOwner: ['stranger', 'stranger'],
+	formerValidator: ['stranger', 'stranger']
 };
 
 export const personasOf = ({ people, sessions, tokens }: Populated): readonly Persona[] => [

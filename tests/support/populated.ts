@@ -6,6 +6,7 @@ import { openRegister } from '$lib/server/boot';
 import type { Config } from '$lib/server/config';
 import type { Ctx } from '$lib/server/context';
 import { openSession, type Limits } from '$lib/server/auth/sessions';
+import { tokenIdIn } from '$lib/server/auth/tokens';
 import { takeStepUp } from '$lib/server/auth/step-up';
 import { storeUpload } from '$lib/server/lineage/upload';
 import type { Act } from '$lib/server/people/acts';
@@ -15,6 +16,7 @@ import { latestRelease } from '$lib/server/policy/released';
 import { policyLines } from '$lib/domain/policy';
 import { waitingProposals } from '$lib/server/people/listing';
 import { assignValidator } from '$lib/server/register/parties';
+import { changeTeam, prepareTeamChange } from '$lib/server/register/team';
 import { proposeOverride } from '$lib/server/register/tier';
 import { testClock } from './clock';
 import { idOf, person } from './people';
@@ -35,6 +37,10 @@ export const castRoles = {
 	admin: ['admin'],
 	secondAdmin: ['admin'],
 	stranger: [],
+	/** Stand as owner and validator of M-001, and hold the role no more. */
+	formerOwner: ['owner'],
+	formerValidator: ['validator'],
+	/** Develops M-001, and was disabled. */
 	leaver: ['owner']
 } as const satisfies Record<string, readonly Role[]>;
 export type Cast = keyof typeof castRoles;
@@ -55,7 +61,7 @@ export interface Subject {
 	readonly sha256: string;
 }
 
-export type TokenName = Scope | 'every' | 'leaver';
+export type TokenName = Scope | 'every' | 'leaver' | 'expired' | 'revoked';
 
 /** A register on disk with people, sessions, tokens, two models and finished runs; nothing of it is a demo. */
 export interface Populated {
@@ -63,7 +69,7 @@ export interface Populated {
 	readonly people: Readonly<Record<Cast, PersonId>>;
 	/** Session tokens: one a person, and two of the owner that open nothing whole. */
 	readonly sessions: Readonly<Record<Cast | 'expired' | 'recovery', string>>;
-	/** API tokens of the owner by scope, one with every scope, and one whose owner was disabled. */
+	/** API tokens of the owner by scope, and some with every scope: alive, over, revoked, of a person who was disabled. */
 	readonly tokens: Readonly<Record<TokenName, string>>;
 	readonly own: Subject;
 	readonly other: Subject;
@@ -83,11 +89,16 @@ const act = async (ctx: Ctx, actor: Actor, what: Act, beside = {}): Promise<Outc
 	return perform(ctx, actor, what, await takeStepUp(ctx, actor, { challenge, response: '' }), beside);
 };
 
-const token = async (ctx: Ctx, owner: Actor, held: readonly Scope[]): Promise<string> => {
+const token = async (
+	ctx: Ctx,
+	owner: Actor,
+	held: readonly Scope[] = scopes,
+	days = 365
+): Promise<string> => {
 	const outcome = await act(
 		ctx,
 		owner,
-		{ kind: 'create-token', person: idOf(owner), scopes: held, days: 365 },
+		{ kind: 'create-token', person: idOf(owner), scopes: held, days },
 		{ label: `for ${held.join(' and ')}` }
 	);
 	if (outcome.kind !== 'token') throw new Error('No token was made');
@@ -97,7 +108,11 @@ const token = async (ctx: Ctx, owner: Actor, held: readonly Scope[]): Promise<st
 const tokensOf = async (ctx: Ctx, owner: Actor, leaver: Actor): Promise<Populated['tokens']> => {
 	const made: [TokenName, string][] = [];
 	for (const scope of scopes) made.push([scope, await token(ctx, owner, [scope])]);
-	made.push(['every', await token(ctx, owner, scopes)], ['leaver', await token(ctx, leaver, scopes)]);
+	// Made a day before the register is opened again.
+	made.push(['every', await token(ctx, owner)], ['expired', await token(ctx, owner, scopes, 1)]);
+	made.push(['leaver', await token(ctx, leaver)], ['revoked', await token(ctx, owner)]);
+	const revoked = tokenIdIn(made.at(-1)![1])!;
+	await act(ctx, owner, { kind: 'revoke-token', person: idOf(owner), token: revoked });
 	return Object.fromEntries(made) as unknown as Populated['tokens'];
 };
 
@@ -108,7 +123,7 @@ const sessionsOf = async (ctx: Ctx, people: Populated['people']): Promise<Popula
 	// The leaver is disabled by now, so that their session shows whether the state is read with each request.
 	for (const [who, id] of Object.entries(people)) made.push([who, await open(id)]);
 	made.push(['recovery', await open(people.owner, 'recovery')]);
-	made.push(['expired', await open(people.owner, 'passkey', { idle: 1, absolute: 1 })]);
+	made.push(['expired', await open(people.owner, 'passkey', { idle: 30, absolute: 720 })]);
 	return Object.fromEntries(made) as Populated['sessions'];
 };
 
@@ -122,6 +137,17 @@ const waiting = async (
 	);
 	const { upload, sha256 } = await storeUpload(ctx, owner, { model, bytes, fileName: 'next.csv' });
 	return { upload, sha256 };
+};
+
+/** Two who have a relation to the model, and lose the role without which it means nothing. */
+const former = async (ctx: Ctx, model: string, cast: Readonly<Record<Cast, Actor>>): Promise<void> => {
+	const { admin, head, formerOwner, formerValidator } = cast;
+	const appointment = { model, person: idOf(formerOwner), relation: 'owner' } as const;
+	const { challenge } = await prepareTeamChange(ctx, admin, 'start', appointment);
+	changeTeam(ctx, admin, 'start', await takeStepUp(ctx, admin, { challenge, response: '' }));
+	assignValidator(ctx, head, { model, person: idOf(formerValidator) });
+	await act(ctx, admin, { kind: 'end-role', person: idOf(formerOwner), role: 'owner' });
+	await act(ctx, admin, { kind: 'end-role', person: idOf(formerValidator), role: 'validator' });
 };
 
 /** The head proposes the released policy, with a reason for each line. */
@@ -155,8 +181,9 @@ const tell = async (ctx: Ctx, pass: (days: number) => void): Promise<Omit<Popula
 	const tokens = await tokensOf(ctx, owner, leaver);
 	await act(ctx, admin, { kind: 'grant', person: people.stranger, role: 'validator' });
 	await act(ctx, admin, { kind: 'disable', person: people.leaver });
-	const sessions = await sessionsOf(ctx, people);
+	await former(ctx, own.model, cast);
 	pass(1);
+	const sessions = await sessionsOf(ctx, people);
 	return {
 		people,
 		sessions,

@@ -1,4 +1,4 @@
-import { readers, team, unseen, type Row } from '../row';
+import { readers, standings, team, unseen, type Row } from '../row';
 import { lossOnUnemployment } from '../../domain/specification-example';
 
 const v1 = '/api/v1';
@@ -55,6 +55,22 @@ const drafting = {
 	about: 'model'
 } as const;
 
+/** Who may not draft is refused that; a developer drafts, and does not submit. */
+const drafted = Object.fromEntries(
+	standings
+		.filter((standing) => !team.includes(standing))
+		.map((standing) => [standing, 'version.draft' as const])
+);
+
+/** Its range is not the one declared. */
+const undeclared = lossOnUnemployment({
+	longRun: {
+		drivers: [{ series: 'unemp', sign: '+', plausible: [0.2, 2], rationale: 'Losses follow unemployment.' }],
+		constant: true,
+		trend: false
+	}
+});
+
 const writing: readonly Row[] = [
 	{ ...declaring('owner'), action: 'driver.declare', allows: team },
 	{
@@ -67,6 +83,15 @@ const writing: readonly Row[] = [
 		...drafting,
 		what: 'a draft that gives no reason',
 		send: () => ({ json: { specification: lossOnUnemployment(), draft: true } })
+	},
+	{
+		...drafting,
+		what: 'a submission against what was declared',
+		action: 'version.submit',
+		actions: drafted,
+		allows: ['owner'],
+		send: () => ({ json: { specification: undeclared, reason: 'Another range.' } }),
+		tokenRules: { data: 'scope' }
 	},
 	{
 		route: `${model}/vintages`,

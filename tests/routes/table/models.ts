@@ -72,6 +72,19 @@ const sheet: readonly Row[] = [
 	},
 	{
 		route: model,
+		method: 'POST ?/assign',
+		what: 'its owner',
+		action: 'validation.assign',
+		send: ({ model: ref }, { own, people }) => ({
+			form: { person: ref === own.model ? people.owner : people.otherOwner }
+		}),
+		allows: [],
+		rules: { head: 'S1' },
+		allowed: 303,
+		about: 'model'
+	},
+	{
+		route: model,
 		method: 'POST ?/release',
 		action: 'validation.release',
 		send: (_, { people }) => ({ form: { person: people.otherValidator } }),
@@ -144,10 +157,9 @@ const appointments: readonly Row[] = [
 	},
 	{
 		...appointing,
-		what: 'end the only owner',
+		what: 'end an owner who is none',
 		action: 'party.end',
-		send: ({ model: ref }, bank) =>
-			appoint(ref === bank.own.model ? 'owner' : 'otherOwner', { kind: 'end', relation: 'owner' })(ref, bank),
+		send: ({ model: ref }, bank) => appoint('stranger', { kind: 'end', relation: 'owner' })(ref, bank),
 		allowed: 400
 	},
 	{
