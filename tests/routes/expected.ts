@@ -45,13 +45,9 @@ const verdictAt = (row: Row, { reference }: Case, persona: Known): Verdict => {
 
 const ofPerson = (row: Row, at: Case, persona: Known): Expected => {
 	const standing = at.reference === 'other' ? persona.other : persona.own;
-	return judged(
-		row,
-		verdictAt(row, at, persona),
-		persona.person,
-		ruleOf(row, standing),
-		actionOf(row, standing)
-	);
+	const found = { ...row, allowed: row.finds?.[standing] ?? row.allowed };
+	const verdict = verdictAt(row, at, persona);
+	return judged(found, verdict, persona.person, ruleOf(row, standing), actionOf(row, standing));
 };
 
 const dead: readonly TokenName[] = ['leaver', 'expired', 'revoked'];

@@ -49,6 +49,8 @@ export interface Row {
 	readonly but?: Readonly<Partial<Record<Standing, Verdict>>>;
 	/** Status of those who are allowed; several where the second finds the work of the first. */
 	readonly allowed: number | readonly number[];
+	/** Where they are told apart by what they find. */
+	readonly finds?: Readonly<Partial<Record<Standing, number>>>;
 	/** Rule named by a refusal, S11 where absent; by standing where it differs. */
 	readonly rule?: string;
 	readonly rules?: Readonly<Partial<Record<Standing, string>>>;

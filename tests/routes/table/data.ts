@@ -19,6 +19,9 @@ const shared = { ...reading, recovery: 'hide' } as const;
 
 const storing = { action: 'dataset.store', allows: team, about: 'model' } as const;
 
+/** A file waits for the one who sent it. */
+const waits = { finds: { developer: 409 } } as const;
+
 const sender = ({ upload }: { upload: string }): string => `?upload=${upload}`;
 
 export const dataRows: readonly Row[] = [
@@ -64,8 +67,8 @@ export const dataRows: readonly Row[] = [
 		method: 'GET',
 		...storing,
 		search: sender,
-		// A file waits for the one who sent it.
-		allowed: [200, 409]
+		...waits,
+		allowed: 200
 	},
 	{
 		route: preview,
@@ -81,7 +84,7 @@ export const dataRows: readonly Row[] = [
 		search: sender,
 		// Nothing is said of the columns.
 		send: ({ sha256 }) => ({ form: { sha256 } }),
-		allowed: [400, 409]
+		allowed: 400
 	},
 	{
 		route: preview,
@@ -90,5 +93,5 @@ export const dataRows: readonly Row[] = [
 		...storing,
 		allowed: 409
 	},
-	{ route: preview, method: 'POST ?/discard', ...storing, search: sender, allowed: [303, 409] }
+	{ route: preview, method: 'POST ?/discard', ...storing, search: sender, ...waits, allowed: 303 }
 ];
