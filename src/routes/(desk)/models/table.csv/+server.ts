@@ -1,7 +1,7 @@
-import { stringify } from 'csv-stringify/sync';
 import { matchesFilter, modelFilterSchema } from '$lib/domain/register-filter';
 import { taken } from '$lib/domain/register-input';
 import { serve } from '$lib/server/http/serve';
+import { csvOf } from '$lib/server/lineage/csv-export';
 import { registerTable, type RegisterLine } from '$lib/server/runs/register-table';
 import { compareValues } from '$lib/ui/table-state';
 import type { RequestHandler } from './$types';
@@ -44,10 +44,6 @@ const sorted = (lines: readonly RegisterLine[], sort: string): RegisterLine[] =>
 	});
 };
 
-/** A cell that a spreadsheet would run as a formula is given as text. */
-const harmless = (cell: string | number | undefined): string | number | undefined =>
-	typeof cell === 'string' && /^[=+\-@\t\r]/.test(cell) ? `'${cell}` : cell;
-
 /** The rows the page shows, with its filters, search and order. */
 export const GET: RequestHandler = (event) =>
 	serve(event, (ctx, actor) => {
@@ -63,12 +59,12 @@ export const GET: RequestHandler = (event) =>
 						.includes(find)
 				)
 			);
-		const body = stringify([
+		const body = csvOf(
 			columns.map(([, head]) => head),
-			...sorted(lines, asked.get('sort') ?? 'due').map((line) =>
-				columns.map(([, , value]) => harmless(value(line)))
+			sorted(lines, asked.get('sort') ?? 'due').map((line) =>
+				columns.map(([, , value]) => value(line) ?? null)
 			)
-		]);
+		);
 		return new Response(body, {
 			headers: {
 				'content-type': 'text/csv; charset=utf-8',
